@@ -24,4 +24,6 @@ export interface LogReadings {
   counts: Readonly<Partial<Record<SensorName, ImportCounts>>>;
   /** SHA-256 of the log's bytes as stored, over its files in the order of their names. */
   sha256: string;
+  /** Rows of a tagged log that are of no sensor in the layout; they are passed over. */
+  skippedRows?: number;
 }
