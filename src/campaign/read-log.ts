@@ -2,7 +2,9 @@ import { createHash, type Hash } from 'node:crypto';
 import { InputError } from '../errors.js';
 import { inDeviceUnits } from './logs/device-units.js';
 import { type LogPlan, planLog, type SensorPart } from './logs/log-plan.js';
+import { readArrowLog } from './logs/read-arrow-log.js';
 import { CsvLogReader } from './logs/read-csv-log.js';
+import { readParquetLog } from './logs/read-parquet-log.js';
 import { storedBytes, unzippedBytes } from './logs/stored-bytes.js';
 import { didYouMean, listNames } from './nearest-name.js';
 import type { ImportCounts, LogReadings } from './readings.js';
@@ -11,16 +13,36 @@ import type { LogLayout, SensorName, Walk } from './types.js';
 
 export { secondsSinceStart } from './seconds-since-start.js';
 
+/** By the first bytes: the magic of an Arrow file or stream, or of Parquet; anything else is text. */
+function formatOf(head: Buffer): 'csv' | 'arrow' | 'parquet' {
+  if (head.toString('latin1', 0, 6) === 'ARROW1') return 'arrow';
+  if (head.length >= 4 && head.readUInt32LE(0) === 0xffffffff) return 'arrow';
+  return head.toString('latin1', 0, 4) === 'PAR1' ? 'parquet' : 'csv';
+}
+
 async function readFile(path: string, plan: LogPlan, hash: Hash): Promise<void> {
-  const chunks = unzippedBytes(path, plan.label, hash);
-  const reader = new CsvLogReader(plan);
-  let empty = true;
-  for await (const chunk of chunks) {
-    if (chunk.length > 0) empty = false;
-    reader.push(chunk);
+  const chunks: Buffer[] = [];
+  let csv: CsvLogReader | null = null;
+  let format: ReturnType<typeof formatOf> | null = null;
+  for await (const chunk of unzippedBytes(path, plan.label, hash)) {
+    if (csv) {
+      csv.push(chunk);
+      continue;
+    }
+    chunks.push(chunk);
+    if (format !== null || chunks.reduce((sum, { length }) => sum + length, 0) < 6) continue;
+    format = formatOf(Buffer.concat(chunks));
+    if (format !== 'csv') continue;
+    csv = new CsvLogReader(plan);
+    for (const each of chunks.splice(0)) csv.push(each);
   }
-  if (empty) throw new InputError('empty-log', `${plan.label}: is empty`);
-  reader.finish();
+  const bytes = Buffer.concat(chunks);
+  if (csv === null && bytes.length === 0) throw new InputError('empty-log', `${plan.label}: is empty`);
+  if (format === 'arrow') return readArrowLog(bytes, plan);
+  if (format === 'parquet') return readParquetLog(bytes, plan);
+  csv ??= new CsvLogReader(plan);
+  csv.push(bytes);
+  csv.finish();
 }
 
 /** Why there is no accelerometer reading: none of its rows, or none that is whole. */

@@ -28,7 +28,7 @@ function sampleRows(head: Buffer, delimiter: string, label: string): string[][] 
 }
 
 /** 4: its first line has all the names wanted; 2: every line has as many fields; 1: the first line has several. */
-function fit(rows: readonly string[][], wanted: readonly string[]): number {
+function fitOf(rows: readonly string[][], wanted: readonly string[]): number {
   const first = rows[0] ?? [];
   if (first.length < 2) return 0;
   const named = wanted.length > 0 && wanted.every((name) => first.includes(name));
@@ -46,7 +46,7 @@ function findDelimiter(head: Buffer, wanted: readonly string[], label: string): 
       // Quotes that do not fit this delimiter may fit another.
       if (!(error instanceof InputError)) throw error;
     }
-    const found = fit(rows, wanted);
+    const found = fitOf(rows, wanted);
     if (found > bestFit) {
       best = delimiter;
       bestFit = found;

@@ -38,7 +38,11 @@ export function inDeviceUnits(
   return columns.map((_, device) => {
     const { axis, sign } = columns.length === 3 ? layout.axes[device]! : { axis: 0, sign: 1 };
     const signed = sign * turned * factor;
+    const column = columns[axis]!;
+    if (signed === 1 && divisor === 1) return column;
+    const converted = new Float64Array(column.length);
     // Adding 0 makes the -0 of a negated zero the plain 0.
-    return columns[axis]!.map((value) => (value * signed) / divisor + 0);
+    for (let row = 0; row < column.length; row++) converted[row] = (column[row]! * signed) / divisor + 0;
+    return converted;
   });
 }

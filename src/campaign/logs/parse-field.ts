@@ -42,21 +42,26 @@ export function parseNumber(bytes: Buffer, start: number, end: number, decimal: 
   }
   const begin = at;
   let mantissa = 0;
-  let decimals = -1;
-  for (; at < end; at++) {
-    const byte = bytes[at]!;
-    if (byte >= ZERO && byte <= NINE) {
-      mantissa = mantissa * 10 + (byte - ZERO);
-      if (decimals >= 0) decimals++;
-    } else if (byte === decimal && decimals < 0) decimals = 0;
-    else return parseSlowly(textOf(bytes, start, end, decimal));
+  let digit = 0;
+  while (at < end && (digit = bytes[at]! - ZERO) >= 0 && digit <= 9) {
+    mantissa = mantissa * 10 + digit;
+    at++;
   }
-  const length = end - begin;
-  if (length === 0 || (length === 1 && decimals === 0))
-    return parseSlowly(textOf(bytes, start, end, decimal));
+  let nDecimals = 0;
+  if (at < end && bytes[at] === decimal) {
+    at++;
+    const point = at;
+    while (at < end && (digit = bytes[at]! - ZERO) >= 0 && digit <= 9) {
+      mantissa = mantissa * 10 + digit;
+      at++;
+    }
+    nDecimals = at - point;
+    if (nDecimals === 0 && point - begin === 1) return parseSlowly(textOf(bytes, start, end, decimal));
+  }
+  if (at < end || at === begin) return parseSlowly(textOf(bytes, start, end, decimal));
   // 15 digits are below 2^53; more of them take the language's own, slower way, which is right for any number.
-  if (length > 15) return Number(textOf(bytes, start, end, decimal));
-  const value = decimals > 0 ? mantissa / TEN[decimals]! : mantissa;
+  if (at - begin > 15) return Number(textOf(bytes, start, end, decimal));
+  const value = nDecimals > 0 ? mantissa / TEN[nDecimals]! : mantissa;
   return negative ? -value : value;
 }
 

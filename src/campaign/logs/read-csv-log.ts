@@ -1,6 +1,6 @@
 import { InputError } from '../../errors.js';
 import { compareStamps } from '../exact-time.js';
-import type { ColumnRef } from '../types.js';
+import type { ColumnRef, TimeUnit } from '../types.js';
 import { type CsvDialect, findDialect } from './csv-dialect.js';
 import { CsvScanner } from './csv-scanner.js';
 import { findColumn } from './find-column.js';
@@ -28,6 +28,10 @@ export class CsvLogReader {
   #parts: PlacedPart[] = [];
   #tagIndex = -1;
   readonly #stamp = new Float64Array(2);
+  /** The field of the present row, and its unit, that `#stamp` was read from: sensors of a wide log share it. */
+  #stampField = -1;
+  #stampUnit: TimeUnit = 's';
+  #stampFound: number = FIELD.missing;
   readonly #values = new Float64Array(3);
 
   constructor(plan: LogPlan) {
@@ -79,6 +83,7 @@ export class CsvLogReader {
   }
 
   #readRow(): void {
+    this.#stampField = -1;
     if (this.#tagIndex === -1) {
       for (const placed of this.#parts) this.#readPart(placed);
       return;
@@ -120,7 +125,12 @@ export class CsvLogReader {
     }
     if (nEmpty === values.length && !part.emptyIsMissing) return;
     const stamp = this.#stamp;
-    const found = parseTime(bytes, starts[time]!, ends[time]!, decimal, part.time.unit, stamp);
+    if (this.#stampField !== time || this.#stampUnit !== part.time.unit) {
+      this.#stampField = time;
+      this.#stampUnit = part.time.unit;
+      this.#stampFound = parseTime(bytes, starts[time]!, ends[time]!, decimal, part.time.unit, stamp);
+    }
+    const found = this.#stampFound;
     if (found === FIELD.bad) this.#refuse(time, part.time.column);
     if (found === FIELD.missing || !complete) {
       part.readings.missing++;
@@ -128,7 +138,7 @@ export class CsvLogReader {
     }
     const seconds = stamp[0]!;
     const femtos = stamp[1]!;
-    part.readings.push(seconds, femtos, this.#values, 0);
+    part.readings.push(seconds, femtos, this.#values);
     const { first } = this.#plan;
     if (compareStamps(seconds, femtos, first.seconds, first.femtos) < 0) {
       first.seconds = seconds;

@@ -18,13 +18,13 @@ export class SensorColumnSet {
     return this.#count;
   }
 
-  /** Adds a reading; `values` holds its axes from index `from` on. */
-  push(seconds: number, femtos: number, values: Float64Array, from: number): void {
+  /** Adds a reading, one value an axis. */
+  push(seconds: number, femtos: number, values: Float64Array): void {
     const row = this.#count;
     if (row === this.#seconds.length) this.#grow();
     this.#seconds[row] = seconds;
     this.#femtos[row] = femtos;
-    for (let axis = 0; axis < this.#values.length; axis++) this.#values[axis]![row] = values[from + axis]!;
+    for (let axis = 0; axis < this.#values.length; axis++) this.#values[axis]![row] = values[axis]!;
     this.#count++;
   }
 
@@ -48,23 +48,40 @@ export class SensorColumnSet {
     const n = this.#count;
     const seconds = this.#seconds;
     const femtos = this.#femtos;
-    const compare = (a: number, b: number) => compareStamps(seconds[a]!, femtos[a]!, seconds[b]!, femtos[b]!);
     let outOfOrder = 0;
-    for (let row = 1; row < n; row++) if (compare(row, row - 1) < 0) outOfOrder++;
-    const order = Uint32Array.from({ length: n }, (_, row) => row);
-    if (outOfOrder > 0) order.sort((a, b) => compare(a, b) || a - b);
     let duplicateTimes = 0;
-    for (let i = 1; i < n; i++) if (compare(order[i]!, order[i - 1]!) === 0) duplicateTimes++;
-    const t_s = new Float64Array(n);
-    for (let i = 0; i < n; i++) {
-      const row = order[i]!;
-      t_s[i] = secondsBetween(seconds[row]!, femtos[row]!, start.seconds, start.femtos);
+    for (let row = 1; row < n; row++) {
+      const step = compareStamps(seconds[row]!, femtos[row]!, seconds[row - 1]!, femtos[row - 1]!);
+      if (step < 0) outOfOrder++;
+      else if (step === 0) duplicateTimes++;
     }
-    const values = this.#values.map((column) => {
-      const sorted = new Float64Array(n);
-      for (let i = 0; i < n; i++) sorted[i] = column[order[i]!]!;
-      return sorted;
-    });
+    if (outOfOrder > 0) duplicateTimes = this.#sort();
+    const t_s = new Float64Array(n);
+    for (let row = 0; row < n; row++)
+      t_s[row] = secondsBetween(this.#seconds[row]!, this.#femtos[row]!, start.seconds, start.femtos);
+    const values = this.#values.map((column) => column.slice(0, n));
     return { t_s, values, counts: { rows: n, outOfOrder, duplicateTimes, missing: this.missing } };
+  }
+
+  /** Sorts all columns by time, keeping the file's order within one instant. @returns readings that share their time with the one before. */
+  #sort(): number {
+    const n = this.#count;
+    const seconds = this.#seconds;
+    const femtos = this.#femtos;
+    const compare = (a: number, b: number) => compareStamps(seconds[a]!, femtos[a]!, seconds[b]!, femtos[b]!);
+    const order = new Uint32Array(n);
+    for (let row = 0; row < n; row++) order[row] = row;
+    order.sort((a, b) => compare(a, b) || a - b);
+    let shared = 0;
+    for (let i = 1; i < n; i++) if (compare(order[i]!, order[i - 1]!) === 0) shared++;
+    const sorted = (column: Float64Array) => {
+      const result = new Float64Array(n);
+      for (let i = 0; i < n; i++) result[i] = column[order[i]!]!;
+      return result;
+    };
+    this.#seconds = sorted(seconds);
+    this.#femtos = sorted(femtos);
+    this.#values = this.#values.map(sorted);
+    return shared;
   }
 }
