@@ -1,7 +1,8 @@
 import { z } from 'zod';
 
+const COLUMN_RULE = 'must be a column name, or a column number from 1';
 const column = z
-  .union([z.string().min(1), z.int().min(1)], 'must be a column name, or a column number from 1')
+  .union([z.string().min(1, COLUMN_RULE), z.int().min(1, COLUMN_RULE)], COLUMN_RULE)
   .describe('A column by its name in the header, or by its number from 1.');
 
 const time = z

@@ -49,7 +49,7 @@ export function didYouMean(name: string, known: Iterable<string>): string {
 
 /** Names as a message lists them: the first twelve, then how many more there are. */
 export function listNames(names: Iterable<string | number>): string {
-  const all = [...names];
+  const all = [...new Set(names)].filter((name) => name !== '');
   if (all.length === 0) return '(none)';
   const shown = all.slice(0, 12).join(', ');
   return all.length > 12 ? `${shown} and ${all.length - 12} more` : shown;

@@ -2,11 +2,12 @@ import { InputError, InputErrors } from '../errors.js';
 
 /** Gathers everything that is wrong with a folder, so that a user mends it in one go. */
 export class Problems {
-  readonly #lines: string[] = [];
+  readonly #lines = new Set<string>();
 
   /** One line: file and place, what is wrong, what would be right. */
   add(line: string): void {
-    this.#lines.push(line);
+    // A set: two readers may come upon the same fault of the same file.
+    this.#lines.add(line);
   }
 
   /** Runs `read`; a mistake in the user's input becomes a problem and the result null. */
@@ -21,11 +22,11 @@ export class Problems {
   }
 
   get any(): boolean {
-    return this.#lines.length > 0;
+    return this.#lines.size > 0;
   }
 
   /** @throws InputErrors with the given code where there is any problem. */
   throwIfAny(code: string): void {
-    if (this.any) throw new InputErrors(code, this.#lines);
+    if (this.any) throw new InputErrors(code, [...this.#lines]);
   }
 }
