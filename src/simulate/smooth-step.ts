@@ -1,0 +1,36 @@
+/** Value and first two derivatives of a function of one number. */
+export type Curve2 = [value: number, slope: number, curvature: number];
+
+/**
+ * Rises from 0 to 1 over u in 0..1, with three derivatives that vanish at both ends.
+ *
+ * @param out - receives value and two derivatives with respect to u.
+ */
+export function smoothStep(u: number, out: Curve2): void {
+  if (!(u > 0 && u < 1)) {
+    out[0] = u > 0 ? 1 : 0;
+    out[1] = 0;
+    out[2] = 0;
+    return;
+  }
+  const u2 = u * u;
+  const rest = 1 - u;
+  out[0] = u2 * u2 * (35 + u * (-84 + u * (70 - 20 * u)));
+  out[1] = 140 * u2 * u * rest * rest * rest;
+  out[2] = 420 * u2 * rest * rest * (1 - 2 * u);
+}
+
+/** A hill of height 1 over u in 0..1, (4u(1-u))^4; three derivatives vanish at both ends. */
+export function smoothHill(u: number, out: Curve2): void {
+  if (!(u > 0 && u < 1)) {
+    out[0] = 0;
+    out[1] = 0;
+    out[2] = 0;
+    return;
+  }
+  const w = 4 * u * (1 - u);
+  const slope = 4 - 8 * u;
+  out[0] = w ** 4;
+  out[1] = 4 * w ** 3 * slope;
+  out[2] = 12 * w * w * slope * slope - 32 * w ** 3;
+}
