@@ -1,5 +1,5 @@
 import type { PlaceContext } from '../../campaign/context.js';
-import { Measurements, type SmoothedChain, smoothChain } from './chain.js';
+import { Measurements, type SmoothedChain, smoothChain } from '../../stats/fixed-interval-smoother.js';
 import type { InertialSamples } from './inertial-samples.js';
 import { followBranch, type MagneticHeading, magneticHeading, meanAngle } from './magnetic-heading.js';
 import type { SmootherSettings } from './methods/fixed-interval-smoother.js';

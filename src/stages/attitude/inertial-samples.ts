@@ -1,6 +1,7 @@
 import { InputError } from '../../errors.js';
 import { fillGaps } from '../../signal/fill-gaps.js';
 import type { Motion } from '../../tables/schemas.js';
+import { LeftOut } from '../left-out.js';
 
 /** One walk's motion as attitude methods read it: gaps bridged for the arithmetic, and where they were. */
 export interface InertialSamples {
@@ -14,7 +15,7 @@ export interface InertialSamples {
 }
 
 /**
- * @throws InputError `no-gyroscope` where the motion has no angular rate; `too-short` below 3 rows.
+ * @throws LeftOut where the motion has no angular rate; `too-short` below 3 rows.
  */
 export function inertialSamples(motion: Motion): InertialSamples {
   const { gx_radps: gx, gy_radps: gy, gz_radps: gz, mx_uT: mx, my_uT: my, mz_uT: mz } = motion;

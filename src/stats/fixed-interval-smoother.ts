@@ -21,6 +21,8 @@ export interface Chain {
   priorVariance: Float64Array;
   /** In the order of their nodes. */
   measurements: Measurements;
+  /** Two states whose covariance is wanted as well. */
+  pair?: readonly [number, number];
 }
 
 /** Scalar measurements, each with at most three coefficients. */
@@ -76,6 +78,8 @@ export interface SmoothedChain {
   mean: Float64Array;
   /** Smoothed variances, shape (nodes, size). */
   variance: Float64Array;
+  /** Smoothed covariance of the chain's `pair`, shape (nodes); empty where no pair was asked for. */
+  covariance: Float64Array;
 }
 
 /**
@@ -97,8 +101,9 @@ export function smoothChain(chain: Chain): SmoothedChain {
   const innovations = new Float64Array(z.count);
   filterForwards(chain, mean, filtered, gains, spread, innovations);
   const variance = new Float64Array(nodes * n);
-  smoothBackwards(chain, mean, filtered, variance, gains, spread, innovations);
-  return { mean, variance };
+  const covariance = new Float64Array(chain.pair ? nodes : 0);
+  smoothBackwards(chain, { mean, variance, covariance }, filtered, gains, spread, innovations);
+  return { mean, variance, covariance };
 }
 
 function filterForwards(
@@ -160,9 +165,8 @@ function filterForwards(
 
 function smoothBackwards(
   chain: Chain,
-  mean: Float64Array,
+  out: SmoothedChain,
   filtered: Float64Array,
-  variance: Float64Array,
   gains: Float64Array,
   spread: Float64Array,
   innovations: Float64Array,
@@ -187,9 +191,10 @@ function smoothBackwards(
         for (let l = 0; l < n; l++) inner += big[k * n + l]! * p[i * n + l]!;
         quadratic += pik * inner;
       }
-      mean[j * n + i]! -= shift;
-      variance[j * n + i] = Math.max(0, p[i * n + i]! - quadratic);
+      out.mean[j * n + i]! -= shift;
+      out.variance[j * n + i] = Math.max(0, p[i * n + i]! - quadratic);
     }
+    if (chain.pair) out.covariance[j] = smoothedEntry(p, big, n, chain.pair[0], chain.pair[1]);
     for (; m >= 0 && z.node[m] === j; m--)
       absorb(z, m, n, lambda, big, column, gains, spread[m]!, innovations[m]!);
     if (j > 0) {
@@ -203,6 +208,17 @@ function smoothBackwards(
       sandwich(big, spare, pattern, transition, at, n, true);
     }
   }
+}
+
+/** Entry (a, b) of P - P big P. */
+function smoothedEntry(p: Float64Array, big: Float64Array, n: number, a: number, b: number): number {
+  let sum = 0;
+  for (let k = 0; k < n; k++) {
+    let inner = 0;
+    for (let l = 0; l < n; l++) inner += big[k * n + l]! * p[b * n + l]!;
+    sum += p[a * n + k]! * inner;
+  }
+  return p[a * n + b]! - sum;
 }
 
 /** Takes one measurement into the backward recursion: lambda and big before its update. */

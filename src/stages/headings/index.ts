@@ -1,0 +1,24 @@
+import {
+  type Attitude,
+  type Headings,
+  headingsTable,
+  type Motion,
+  type Steps,
+} from '../../tables/schemas.js';
+import { defineStage } from '../stage.js';
+import { deviceAxis } from './methods/device-axis.js';
+
+export interface HeadingsInputs {
+  steps: Steps;
+  motion: Motion;
+  attitude: Attitude;
+}
+
+/** Walking direction of each step. */
+export const headingsStage = defineStage<HeadingsInputs, Headings>({
+  name: 'headings',
+  table: headingsTable,
+  reads: ['steps', 'motion', 'attitude'],
+  methods: [deviceAxis],
+  defaultMethod: deviceAxis.name,
+});
