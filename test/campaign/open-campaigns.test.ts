@@ -12,7 +12,7 @@ if (!present)
   console.log(`skipped: no open recordings at ${folder} (TREADLINE_OPEN_DATA names another place)`);
 
 // Walks, sensors, rates and durations as the recordings' own description gives them, in round numbers:
-// a twentieth is allowed on rates, a tenth on durations (a fifth of "about 150 s"). pocket-groups gives lengths: 75 to 300 m at walking pace.
+// a twentieth is allowed on rates, a tenth on durations (a third of "about 150 s"). pocket-groups gives lengths: 75 to 300 m at walking pace.
 const CAMPAIGNS = [
   {
     name: 'halls',
@@ -23,7 +23,7 @@ const CAMPAIGNS = [
     lowS: 36,
     highS: 132,
   },
-  { name: 'counted-steps', walks: 31, sensors: ['accel'], lowHz: 95, highHz: 425, lowS: 120, highS: 180 },
+  { name: 'counted-steps', walks: 31, sensors: ['accel'], lowHz: 95, highHz: 425, lowS: 100, highS: 200 },
   {
     name: 'optical-attitude',
     walks: 10,
