@@ -23,7 +23,7 @@ export interface CarryInputs {
   gait: GaitMotion;
   /** Steps taken, whole at each contact, even at the left foot's. */
   phase: Jet;
-  /** 0 while standing, about 1 at the walker's own pace. */
+  /** 0 while standing, about 1 for steps of three quarters of a leg. */
   vigour: Jet;
 }
 
@@ -78,17 +78,18 @@ function beat(inputs: CarryInputs, offset: number, amplitude: number, timesPi: n
   return addProduct(constantJet(wave.v.length, offset), amplitude, inputs.vigour, wave);
 }
 
-/** Fixed to the trunk at a place (m), following the pelvis by `share`. */
+/** Fixed to the trunk at a place (m), following the pelvis by `share` and the heel strike's jolt by `jolt`. */
 function onTrunk(
   inputs: CarryInputs,
   place: [number, number, number],
   share: number,
+  jolt: number,
 ): Pick<CarryPose, 'right' | 'forward' | 'up'> {
   const { gait } = inputs;
   return {
     right: combine(place[0], share, gait.right),
     forward: combine(place[1], share, gait.forward),
-    up: combine(place[2], share, gait.up),
+    up: combine(place[2], share, gait.up, jolt, gait.jolt),
   };
 }
 
@@ -99,13 +100,14 @@ function onLimb(
   joint: [number, number, number],
   forward: number,
   down: number,
+  jolt: number,
 ): Pick<CarryPose, 'right' | 'forward' | 'up'> {
   const { gait } = inputs;
   const [s, c] = [sine(angle), cosine(angle)];
   return {
     right: combine(joint[0], 1, gait.right),
     forward: combine(joint[1], 1, gait.forward, 1, combine(0, forward, c, down, s)),
-    up: combine(joint[2], 1, gait.up, 1, combine(0, forward, s, -down, c)),
+    up: combine(joint[2], 1, combine(0, 1, gait.up, jolt, gait.jolt), 1, combine(0, forward, s, -down, c)),
   };
 }
 
@@ -122,8 +124,8 @@ function pocket(inputs: CarryInputs, mount: Mounting, side: 'front' | 'back'): C
   const angle = thighAngle(inputs, share);
   return {
     ...(side === 'front'
-      ? onLimb(inputs, angle, [0.06 * heightM, 0, -0.02 * heightM], 0.05 * heightM, 0.1 * heightM)
-      : onLimb(inputs, angle, [0.05 * heightM, 0, 0], -0.07 * heightM, 0.02 * heightM)),
+      ? onLimb(inputs, angle, [0.06 * heightM, 0, -0.02 * heightM], 0.05 * heightM, 0.1 * heightM, 2.2)
+      : onLimb(inputs, angle, [0.05 * heightM, 0, 0], -0.07 * heightM, 0.02 * heightM, 1.8)),
     yaw: beat(inputs, mount.yawRad, 5 * RAD, 1, 0.2),
     pitch: combine(mount.pitchRad, 1, angle),
     roll: beat(inputs, mount.rollRad, 4 * RAD, 1, 0.5),
@@ -136,7 +138,8 @@ function pocket(inputs: CarryInputs, mount: Mounting, side: 'front' | 'back'): C
  *
  * Amplitudes are those of a comfortable pace: arm swing 20 degrees to each side and thigh from 25 to -15
  * degrees (Winter 2009; Murray, Drought & Kory 1964), pelvis 4 degrees about up and 3 about forward;
- * mounting spreads, the bag's pendulum and the hand's damping are common practice, no source.
+ * mounting spreads, the bag's pendulum, the hand's damping and the part of the heel strike's jolt that
+ * reaches the phone (more at the thigh, less in the hand) are common practice, no source.
  */
 export const CARRIES: Readonly<Record<CarryName, Carry>> = {
   hand: {
@@ -144,7 +147,7 @@ export const CARRIES: Readonly<Record<CarryName, Carry>> = {
     mount: (random) => mounting(FLAT, random, [4, 5, 3], 35),
     // The arm takes up a part of the trunk's motion.
     pose: (inputs, mount) => ({
-      ...onTrunk(inputs, [0.03, 0.32, 0.14 * inputs.walker.heightM], 0.9),
+      ...onTrunk(inputs, [0.03, 0.32, 0.14 * inputs.walker.heightM], 0.9, 0.5),
       yaw: beat(inputs, mount.yawRad, 1.5 * RAD, 1, 0.3),
       pitch: beat(inputs, mount.pitchRad, 1.2 * RAD, 2, 0.2),
       roll: beat(inputs, mount.rollRad, 1 * RAD, 1, 0.6),
@@ -162,10 +165,10 @@ export const CARRIES: Readonly<Record<CarryName, Carry>> = {
         1,
         beat(inputs, 4 * RAD, 20 * RAD, 1, 0.05),
         1,
-        beat(inputs, 0, 2 * RAD, 2, 0.05),
+        beat(inputs, 0, 1 * RAD, 2, 0.05),
       );
       return {
-        ...onLimb(inputs, arm, [0.13 * heightM, 0, 0.29 * heightM], 0, 0.38 * heightM),
+        ...onLimb(inputs, arm, [0.13 * heightM, 0, 0.29 * heightM], 0, 0.38 * heightM, 0.4),
         yaw: beat(inputs, mount.yawRad, 6 * RAD, 1, 0.15),
         pitch: combine(mount.pitchRad, 1.15, arm),
         roll: beat(inputs, mount.rollRad, 5 * RAD, 1, 0.3),
@@ -189,7 +192,7 @@ export const CARRIES: Readonly<Record<CarryName, Carry>> = {
       const { heightM } = inputs.walker;
       return {
         // Hangs from the shoulder.
-        ...onLimb(inputs, swing, [0.15 * heightM, -0.03, 0.3 * heightM], 0, 0.35 * heightM),
+        ...onLimb(inputs, swing, [0.15 * heightM, -0.03, 0.3 * heightM], 0, 0.35 * heightM, 1.2),
         yaw: beat(inputs, mount.yawRad, 5 * RAD, 1, 0.4),
         pitch: combine(mount.pitchRad, 1, swing),
         roll: beat(inputs, mount.rollRad, 4 * RAD, 1, 0.2),
@@ -201,7 +204,7 @@ export const CARRIES: Readonly<Record<CarryName, Carry>> = {
     wanderRad: 0.4 * RAD,
     mount: (random) => mounting(UPRIGHT_OUT, random, [5, 4, 4], 8),
     pose: (inputs, mount) => ({
-      ...onTrunk(inputs, [0, 0.13, 0.2 * inputs.walker.heightM], 0.95),
+      ...onTrunk(inputs, [0, 0.13, 0.2 * inputs.walker.heightM], 0.95, 0.8),
       // The shoulders turn against the pelvis.
       yaw: beat(inputs, mount.yawRad, -3 * RAD, 1, 0.1),
       pitch: beat(inputs, mount.pitchRad, 1.5 * RAD, 2, 0.1),
@@ -213,7 +216,7 @@ export const CARRIES: Readonly<Record<CarryName, Carry>> = {
     wanderRad: 0.3 * RAD,
     mount: (random) => mounting(UPRIGHT_OUT, random, [8, 4, 4]),
     pose: (inputs, mount) => ({
-      ...onTrunk(inputs, [0.08, 0.13, 0.02], 1),
+      ...onTrunk(inputs, [0.08, 0.13, 0.02], 1, 1),
       yaw: beat(inputs, mount.yawRad, 4 * RAD, 1, 0),
       pitch: beat(inputs, mount.pitchRad, 1.5 * RAD, 2, 0.1),
       roll: beat(inputs, mount.rollRad, 3 * RAD, 1, 0.5),

@@ -78,13 +78,21 @@ export function motionAt(model: MotionModel, times: Float64Array): DeviceMotion 
   return out;
 }
 
+/** A step's length against the leg's at a comfortable pace: limbs swing by about 20 degrees. Norms of gait-norms.ts. */
+const COMFORTABLE_STEP_PER_LEG = 0.73;
+
+function vigourPerLift(walker: WalkerModel): number {
+  const pace = walker.stepLengthM / walker.legM / COMFORTABLE_STEP_PER_LEG;
+  return pace / liftM(walker, walker.stepLengthM);
+}
+
 function block(model: MotionModel, times: Float64Array, from: number, out: DeviceMotion): void {
   const n = times.length;
   const course = courseAt(model.timeline, times);
   const [east, north, heading] = [zeroJet(n), zeroJet(n), zeroJet(n)];
   model.curve.follow(course.along, east, north, heading);
   const gait = gaitMotion(model.walker, course.phase, course.lift);
-  const vigour = combine(0, 1 / liftM(model.walker, model.walker.stepLengthM), course.lift);
+  const vigour = combine(0, vigourPerLift(model.walker), course.lift);
   const inputs = { walker: model.walker, gait, phase: course.phase, vigour };
   const carried = carriedAt(model.spells, times, inputs, heading);
   const [sin, cos] = [sine(heading), cosine(heading)];

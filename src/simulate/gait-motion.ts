@@ -8,6 +8,8 @@ export interface GaitMotion {
   right: Jet;
   forward: Jet;
   up: Jet;
+  /** The jolt of the heel strike at the pelvis, upward, m; apart, for it is damped or grows on the way to the phone. */
+  jolt: Jet;
 }
 
 const TURN = 2 * Math.PI;
@@ -44,15 +46,15 @@ export function gaitMotion(walker: WalkerModel, phase: Jet, lift: Jet): GaitMoti
   const up = zeroJet(n);
   for (const { times, share, at } of VERTICAL_HARMONICS)
     addProduct(up, -share / times ** 2, lift, sine(phase, TURN * times, Math.PI / 2 - TURN * times * at));
-  // The jolt, as a part of the lift, so that a timid step has a timid heel strike.
-  addProduct(up, -1, lift, heelStrike(walker, phase));
+  // As a part of the lift, so that a timid step has a timid heel strike.
+  const jolt = addProduct(zeroJet(n), -1, lift, heelStrike(walker, phase));
   const forward = zeroJet(n);
   for (const { times, share, at } of FORWARD_HARMONICS)
     addProduct(forward, share / times ** 2, lift, sine(phase, TURN * times, -TURN * times * at));
   // Over the left foot from its contact (even phase) to the right one's, as wide as the body is lifted:
   // about 2 cm to each side at a comfortable pace (from memory).
   const right = product(lift, sine(phase, Math.PI, Math.PI));
-  return { right, forward, up };
+  return { right, forward, up, jolt };
 }
 
 /** A short dip after each contact, in parts of the lift; its upward acceleration peaks at the walker's value. */

@@ -18,9 +18,13 @@ interface Piece {
   corner: Corner | null;
 }
 
-/** How long a corner is: one step for a slight bend, three steps from a right angle on. */
-const SHORTEST_CORNER_M = 0.7;
-const LONGEST_CORNER_M = 2.2;
+/**
+ * How long a corner is: more the more it turns, two to three steps for a right angle. Its first and last
+ * sixth are nearly straight.
+ */
+const SHORTEST_CORNER_M = 0.9;
+const CORNER_M_PER_RAD = 1.35;
+const LONGEST_CORNER_M = 4.4;
 
 /**
  * The smooth curve that a walker follows along a polyline, by arc length.
@@ -48,10 +52,7 @@ export class RouteCurve {
     const corners = legs.slice(1).map((leg, i) => {
       const turn = leg.headingRad - legs[i]!.headingRad;
       const turnRad = turn - 2 * Math.PI * Math.ceil(turn / (2 * Math.PI) - 0.5);
-      const wanted = Math.min(
-        LONGEST_CORNER_M,
-        SHORTEST_CORNER_M + ((LONGEST_CORNER_M - SHORTEST_CORNER_M) * Math.abs(turnRad)) / (Math.PI / 2),
-      );
+      const wanted = Math.min(LONGEST_CORNER_M, SHORTEST_CORNER_M + CORNER_M_PER_RAD * Math.abs(turnRad));
       return new Corner(turnRad, Math.min(wanted, 0.98 * legs[i]!.lengthM, 0.98 * leg.lengthM));
     });
     let atM = 0;

@@ -4,8 +4,8 @@ import type { Bout, Ride, Timeline } from './timeline.js';
 import { walkBout } from './walk-bout.js';
 import type { WalkerModel } from './walker-model.js';
 
-/** Speed falls in a bend by curvature: to 3/4 at a radius of 0.75 m. Common practice, no source. */
-const BEND_SLOWDOWN_M = 0.25;
+/** Speed falls in a bend by curvature: to 2/3 at a radius of 0.8 m. Common practice, no source. */
+const BEND_SLOWDOWN_M = 0.4;
 
 /** Stops nearer to each other or to an end than this cannot be walked between, m. */
 const SHORTEST_BOUT_M = 0.5;
