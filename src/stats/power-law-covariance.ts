@@ -6,14 +6,13 @@
 export type NoiseExponent = 2 | 1 | 0 | -1 | -2 | -3 | -4;
 
 /**
- * Generalised autocovariance of the integral of power-law noise, up to a factor, at lag t.
+ * Generalised autocovariance, up to a factor, of noise with the spectrum f^(exponent - 4): the second
+ * integral of rate noise of this exponent, or the first integral of rate noise of exponent - 2.
  *
- * Not a covariance by itself where the integral is not stationary; sums of it over finite differences of
- * a high enough order are.
+ * Not a covariance by itself, as such noise is not stationary; sums of it over finite differences of a high
+ * enough order are.
  *
  * @param t - lag, any sign.
- * @param exponent - 4 to -4, of the spectrum f^(exponent - 2) of the integral; 4 is the second integral's
- *   companion of white phase noise.
  * @see Greenhall & Riley (2003), Uncertainty of stability variances based on finite differences, 35th
  *   PTTI meeting, 267-280, equation for s_w.
  */
