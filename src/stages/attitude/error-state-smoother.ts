@@ -14,12 +14,10 @@ const VELOCITY = 6;
 const ACCEL_BIAS = 9;
 const SCALE = 12;
 
-/** Entries of the cross-product matrix that are not zero. */
+/** Entries of the cross-product matrix that tilt takes part in. */
 const CROSS: readonly (readonly [number, number])[] = [
   [0, 1],
-  [0, 2],
   [1, 0],
-  [1, 2],
   [2, 0],
   [2, 1],
 ];
@@ -95,12 +93,11 @@ export function smoothAttitude(
       }
       weights.update(heading, trajectory, round > 1 ? chain : null);
     }
-    const largeYaw = round === 1;
     chain = smoothChain({
       nodes,
       size: SIZE,
       pattern: PATTERN,
-      ...dynamics(trajectory, settings, place.gravity_mps2, largeYaw),
+      ...dynamics(trajectory, settings, place.gravity_mps2),
       ...prior(trajectory, settings, biasVariance, velocity.horizontal),
       measurements: measurements(trajectory, rest, restRate, settings, velocity, heading, weights),
     });
@@ -171,7 +168,7 @@ function transitionPattern(): Int32Array {
   return Int32Array.from(entries);
 }
 
-function dynamics(trajectory: Trajectory, settings: SmootherSettings, gravity: number, largeYaw: boolean) {
+function dynamics(trajectory: Trajectory, settings: SmootherSettings, gravity: number) {
   const intervals = trajectory.nodes - 1;
   const width = PATTERN.length;
   const transition = new Float64Array(intervals * width);
@@ -189,11 +186,10 @@ function dynamics(trajectory: Trajectory, settings: SmootherSettings, gravity: n
     const sx = impulse[3 * j]!;
     const sy = impulse[3 * j + 1]!;
     const sz = impulse[3 * j + 2]!;
-    // Attitude error times impulse; a yaw error that is still large would turn the velocity beyond the linear range.
+    // Tilt error times impulse. A yaw error would turn the velocity as well, but the scatter of the velocity is the same
+    // in all horizontal directions and cannot tell it: the linear term would only feign knowledge of yaw.
     transition[e++] = sz;
-    transition[e++] = largeYaw ? 0 : -sy;
     transition[e++] = -sz;
-    transition[e++] = largeYaw ? 0 : sx;
     transition[e++] = sy;
     transition[e++] = -sx;
     const at = j * SIZE;

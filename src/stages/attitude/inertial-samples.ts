@@ -19,11 +19,7 @@ export interface InertialSamples {
  */
 export function inertialSamples(motion: Motion): InertialSamples {
   const { gx_radps: gx, gy_radps: gy, gz_radps: gz, mx_uT: mx, my_uT: my, mz_uT: mz } = motion;
-  if (!gx || !gy || !gz)
-    throw new InputError(
-      'no-gyroscope',
-      'attitude: the log has no gyroscope, so there is no heading and no path',
-    );
+  if (!gx || !gy || !gz) throw new LeftOut('the log has no gyroscope: attitude, headings and path need one');
   const count = motion.t_s.length;
   if (count < 3) throw new InputError('too-short', `attitude: needs at least 3 rows of motion, got ${count}`);
   return {

@@ -1,31 +1,58 @@
 /**
- * Rotation vector of the turn between two gyroscope samples, written to `out`.
+ * Rotation vectors between consecutive gyroscope samples, written to `out`.
  *
- * Trapezoid plus the first coning term, exact to third order for a rate that changes linearly in between.
+ * The integral of the cubic through the four samples around each interval, plus the first coning term; at the ends of
+ * the range the outermost sample stands in for the one beyond it. Bias and scale are those of the whole range.
  *
+ * @param gyro - x, y, z rates, rad/s, each of shape (n).
+ * @param from - first interval: between samples `from` and `from + 1`.
+ * @param to - the interval before which to stop; at most n - 1.
+ * @param bias - rad/s, to be subtracted first; three values from `biasAt` on.
+ * @param gain - factors of x, y, z, applied to what is left.
+ * @param dt - spacing of the samples, s.
+ * @param out - shape (>= 3 (to - from)): rotation vector of each interval, rad.
  * @see Bortz (1971), IEEE Trans. Aerospace and Electronic Systems 7(1), 61-66: the rotation-vector equation.
  */
-export function turnBetween(
-  ax: number,
-  ay: number,
-  az: number,
-  bx: number,
-  by: number,
-  bz: number,
+export function turnsBetween(
+  gyro: readonly [Float64Array, Float64Array, Float64Array],
+  from: number,
+  to: number,
+  bias: Float64Array,
+  biasAt: number,
+  gain: readonly [number, number, number],
   dt: number,
   out: Float64Array,
 ): void {
-  const c = (dt * dt) / 12;
-  out[0] = 0.5 * dt * (ax + bx) + c * (ay * bz - az * by);
-  out[1] = 0.5 * dt * (ay + by) + c * (az * bx - ax * bz);
-  out[2] = 0.5 * dt * (az + bz) + c * (ax * by - ay * bx);
+  const [gx, gy, gz] = gyro;
+  const [sx, sy, sz] = gain;
+  const bx = bias[biasAt]!;
+  const by = bias[biasAt + 1]!;
+  const bz = bias[biasAt + 2]!;
+  const last = gx.length - 1;
+  const coning = (dt * dt) / 12;
+  const w = dt / 24;
+  for (let i = from, o = 0; i < to; i++, o += 3) {
+    const before = i > 0 ? i - 1 : 0;
+    const after = i + 2 <= last ? i + 2 : last;
+    const ax = sx * (gx[i]! - bx);
+    const ay = sy * (gy[i]! - by);
+    const az = sz * (gz[i]! - bz);
+    const cx = sx * (gx[i + 1]! - bx);
+    const cy = sy * (gy[i + 1]! - by);
+    const cz = sz * (gz[i + 1]! - bz);
+    out[o] = w * (13 * (ax + cx) - sx * (gx[before]! + gx[after]! - 2 * bx)) + coning * (ay * cz - az * cy);
+    out[o + 1] =
+      w * (13 * (ay + cy) - sy * (gy[before]! + gy[after]! - 2 * by)) + coning * (az * cx - ax * cz);
+    out[o + 2] =
+      w * (13 * (az + cz) - sz * (gz[before]! + gz[after]! - 2 * bz)) + coning * (ax * cy - ay * cx);
+  }
 }
 
-/** Multiplies the quaternion at `q[i..i+3]` from the right by the turn `v` (rotation vector), in place, kept at unit length. */
-export function turnInPlace(q: Float64Array, i: number, v: Float64Array): void {
-  const x = v[0]!;
-  const y = v[1]!;
-  const z = v[2]!;
+/** Multiplies the quaternion at `q[i..i+3]` from the right by the rotation vector at `v[k..k+2]`, in place, kept at unit length. */
+export function turnInPlace(q: Float64Array, i: number, v: Float64Array, k: number): void {
+  const x = v[k]!;
+  const y = v[k + 1]!;
+  const z = v[k + 2]!;
   const angle2 = x * x + y * y + z * z;
   let c: number;
   let s: number;

@@ -1,5 +1,5 @@
 import type { InertialSamples } from './inertial-samples.js';
-import { turnBetween, turnInEarthFrame, turnInPlace } from './strapdown.js';
+import { turnInEarthFrame, turnInPlace, turnsBetween } from './strapdown.js';
 
 /**
  * The current estimate of the orientation at every sample, with gyroscope bias per node interval and scale,
@@ -32,13 +32,14 @@ export class Trajectory {
   /** Magnetometer samples in the interval. */
   readonly fieldCount: Int32Array;
   private readonly samples: InertialSamples;
-  private readonly turn = new Float64Array(3);
+  private readonly turns: Float64Array;
 
   constructor(samples: InertialSamples, nodeS: number) {
     this.samples = samples;
     this.perNode = Math.max(1, Math.round(nodeS / samples.stepS));
     this.nodes = Math.max(2, Math.ceil((samples.count - 1) / this.perNode) + 1);
     const intervals = this.nodes - 1;
+    this.turns = new Float64Array(3 * this.perNode);
     this.q = new Float64Array(4 * samples.count);
     this.q[0] = 1;
     this.bias = new Float64Array(3 * intervals);
@@ -67,32 +68,18 @@ export class Trajectory {
 
   /** Integrates the gyroscope through node interval j from the orientation at its first sample. */
   integrate(j: number): void {
-    const [gx, gy, gz] = this.samples.gyro;
-    const bx = this.bias[3 * j]!;
-    const by = this.bias[3 * j + 1]!;
-    const bz = this.bias[3 * j + 2]!;
-    const sx = 1 + this.scale[0]!;
-    const sy = 1 + this.scale[1]!;
-    const sz = 1 + this.scale[2]!;
+    const from = this.sampleOf(j);
     const end = this.sampleOf(j + 1);
+    const gain = [1 + this.scale[0]!, 1 + this.scale[1]!, 1 + this.scale[2]!] as const;
+    turnsBetween(this.samples.gyro, from, end, this.bias, 3 * j, gain, this.samples.stepS, this.turns);
     const q = this.q;
-    for (let i = this.sampleOf(j); i < end; i++) {
+    for (let i = from, k = 0; i < end; i++, k += 3) {
       const to = 4 * (i + 1);
       q[to] = q[to - 4]!;
       q[to + 1] = q[to - 3]!;
       q[to + 2] = q[to - 2]!;
       q[to + 3] = q[to - 1]!;
-      turnBetween(
-        sx * (gx[i]! - bx),
-        sy * (gy[i]! - by),
-        sz * (gz[i]! - bz),
-        sx * (gx[i + 1]! - bx),
-        sy * (gy[i + 1]! - by),
-        sz * (gz[i + 1]! - bz),
-        this.samples.stepS,
-        this.turn,
-      );
-      turnInPlace(q, to, this.turn);
+      turnInPlace(q, to, this.turns, k);
     }
   }
 
