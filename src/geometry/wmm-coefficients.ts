@@ -14,7 +14,8 @@ export interface GeomagneticModel {
  * The editions in ascending epochs. Produced by the NOAA National Centers for Environmental Information
  * and the British Geological Survey: a work of the US Government, in the public domain.
  *
- * @see WMM2015v2 is the out-of-cycle replacement of February 2019; it supersedes WMM2015 for its whole span.
+ * @see WMM2015v2 is the out-of-cycle replacement of February 2019; it supersedes WMM2015 for its
+ *   whole span. The numbers are those of the npm package geomagnetism 0.2.0.
  * @see WMM2020.COF of 10 December 2019 and WMM2025 (WMM.COF) of 13 November 2024, copied beside the
  *   published test values and compared with this table by the tests.
  */

@@ -24,12 +24,21 @@ export interface NoiseFit {
   tauS: number[];
 }
 
-/** Each noise's Allan variance at tau, and the covariance of its integral, for a parameter of 1. */
-const NOISES: readonly { variance: (tauS: number) => number; scale: number; exponent: NoiseExponent }[] = [
-  { variance: (tauS) => 1 / tauS, scale: 1 / 2, exponent: 2 },
-  { variance: () => (2 * Math.LN2) / Math.PI, scale: 1 / (2 * Math.PI), exponent: 1 },
-  { variance: (tauS) => tauS / 3, scale: 1 / 12, exponent: 0 },
+interface Noise {
+  /** Allan variance at an averaging time, for a parameter of 1. */
+  variance: (tauS: number) => number;
+  /** Of the rate's spectrum plus 2: then {@link integralCovariance} is that of its first integral. */
+  exponent: NoiseExponent;
+}
+
+/** Angle random walk, bias instability, rate random walk. */
+const NOISES: readonly Noise[] = [
+  { variance: (tauS) => 1 / tauS, exponent: 2 },
+  { variance: () => (2 * Math.LN2) / Math.PI, exponent: 1 },
+  { variance: (tauS) => tauS / 3, exponent: 0 },
 ];
+/** Scales the covariance so that the mean square of a second difference is 2 tau² times the Allan variance. */
+const SCALES = NOISES.map((noise) => (2 * noise.variance(1)) / secondDifferences(0, 1, 1, noise.exponent));
 
 /** Averaging times closer than this tell the same thing twice. */
 const MIN_RATIO = 1.4;
@@ -150,7 +159,7 @@ function pairProducts(mi: number, mj: number, nPhase: number, dt: number): numbe
     const pairs = Math.min(ni, nj + lag) - Math.max(0, lag);
     if (pairs <= 0) continue;
     for (const [a, noise] of NOISES.entries())
-      at[a] = noise.scale * secondDifferences(lag * dt, mi * dt, mj * dt, noise.exponent);
+      at[a] = SCALES[a]! * secondDifferences(lag * dt, mi * dt, mj * dt, noise.exponent);
     for (let a = 0; a < at.length; a++)
       for (let b = 0; b < at.length; b++) sums[a]![b]! += pairs * step * at[a]! * at[b]!;
   }

@@ -16,6 +16,18 @@ describe('normalGravity', () => {
     expect(Math.abs(normalGravity(latDeg, 0) - gravity)).toBeLessThan(1.1e-10);
   });
 
+  test.each([
+    // Source: test/published/data/stats/normal_gravity.py, the gradient of the normal potential, 12 digits.
+    [0, 2000, 9.77415264539],
+    [45, 2000, 9.80002947454],
+    [45, 10000, 9.77541418823],
+    [80, 10000, 9.79985153547],
+  ])('above the ellipsoid at %d degrees, %d m', (latDeg, heightM, gravity) => {
+    // Tolerance: the series leaves out terms of the flattening times h²; 4e-7 at 10 km. The linear term alone is
+    // off by 7e-5.
+    expect(Math.abs(normalGravity(latDeg, heightM) - gravity)).toBeLessThan(5e-7);
+  });
+
   test('falls by 0.3086 mGal per metre', () => {
     // From memory: the usual free-air gradient, 3.086e-6 s^-2, good to its last digit near 45 degrees.
     const gradient = (normalGravity(45, 50) - normalGravity(45, -50)) / 100;

@@ -50,6 +50,7 @@ describe('fitNoise', () => {
     const k = scatter(fits, 'rateRandomWalk');
     // Bias instability, held at or above 0, takes a little of the random walk away.
     expect(Math.abs(k.mean - truth.K)).toBeLessThan(0.15 * truth.K);
+    expect(Math.abs(k.stated / k.deviation - 1)).toBeLessThan(0.35);
     const misfit = fits.reduce((sum, fit) => sum + fit.chiSquare / fit.degreesOfFreedom, 0) / 60;
     // Tolerance: a chi-square of 18 over its degrees scatters by 1/3, the mean of 60 by 0.04.
     expect(Math.abs(misfit - 1)).toBeLessThan(0.2);

@@ -50,6 +50,16 @@ describe('randomStream', () => {
     expect(Math.abs(outside - expected)).toBeLessThan(4 * Math.sqrt(expected));
   });
 
+  test('normal: the far tail falls as it should', () => {
+    const stream = randomStream(21, 'tail');
+    const n = 8_000_000;
+    let beyond = 0;
+    for (let i = 0; i < n; i++) if (Math.abs(stream.normal()) > 4) beyond++;
+    // Tolerance: 4 standard errors; a tail that only fell exponentially would be 7 away.
+    const expected = 2 * n * normalCdf(-4);
+    expect(Math.abs(beyond - expected)).toBeLessThan(4 * Math.sqrt(expected));
+  });
+
   test('uniform: in [0, 1), equal shares, all bits in use', () => {
     const stream = randomStream(3, 'uniform');
     const counts = new Float64Array(64);

@@ -9,7 +9,7 @@ rng = np.random.default_rng(12)
 skewed = np.round(rng.exponential(2.0, 24), 3)
 differences = np.round(rng.normal(0.4, 1.0, 10), 3)
 many = np.round(rng.normal(-0.05, 1.0, 30), 3)
-x = np.round(rng.uniform(0, 10, 40), 1)
+x = np.round(rng.uniform(0, 4, 40))
 y = np.round(0.7 * x + rng.standard_t(2, 40), 1)
 
 
