@@ -25,7 +25,7 @@ const DECIMAL = /^([+-]?)(\d*)(?:\.(\d*))?(?:[eE]([+-]?\d{1,4}))?$/;
  * @returns null where it is not a decimal number or has more than 15 digits of seconds.
  */
 export function parseStamp(text: string, unit: TimeUnit): Stamp | null {
-  const match = DECIMAL.exec(text.trim());
+  const match = DECIMAL.exec(text);
   if (!match) return null;
   const [, sign, whole = '', decimals = '', exponent = '0'] = match;
   if (whole === '' && decimals === '') return null;
@@ -38,8 +38,7 @@ export function parseStamp(text: string, unit: TimeUnit): Stamp | null {
   if (point > 15) return null;
   const direction = sign === '-' ? -1 : 1;
   const before = point > 0 ? digits.slice(0, point).padEnd(point, '0') : '0';
-  const after = point > 0 ? digits.slice(point) : '0'.repeat(Math.min(-point, 40)) + digits;
-  const femtos = Number(`${after.slice(0, 15).padEnd(15, '0')}.${after.slice(15)}0`);
+  const femtos = Number(point > 0 ? `0.${digits.slice(point)}e15` : `0.${digits}e${point + 15}`);
   return { seconds: direction * Number(before), femtos: direction * femtos };
 }
 

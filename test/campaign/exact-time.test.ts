@@ -18,6 +18,7 @@ test('parseStamp: whole seconds and femtoseconds, by hand', () => {
   expect(parseStamp('5.', 's')).toEqual({ seconds: 5, femtos: 0 });
   expect(parseStamp('1.574570929727E12', 'ms')).toEqual({ seconds: 1574570929, femtos: 727e12 });
   expect(parseStamp('1e-20', 's')).toEqual({ seconds: 0, femtos: 0.00001 });
+  expect(parseStamp('25e-61', 'ns')).toEqual({ seconds: 0, femtos: 2.5e-54 });
   expect(parseStamp('000', 'ns')).toEqual({ seconds: 0, femtos: 0 });
 });
 

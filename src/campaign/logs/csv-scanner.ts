@@ -131,7 +131,7 @@ export class CsvScanner {
     this.nFields = nFields;
     this.row = this.#nextLine;
     this.#nextLine += nLines;
-    return nFields === 1 && this.starts[0] === this.ends[0] && this.quoted[0] === 0;
+    return nFields === 1 && this.starts[0] === this.ends[0];
   }
 
   #closingQuote(from: number): number {
