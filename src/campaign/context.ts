@@ -11,6 +11,8 @@ export interface WalkContext {
   start: StartContext | null;
   /** Passes of surveyed checkpoints in time order, times since the walk's first reading. */
   passes: readonly PassContext[];
+  /** Passes more than a second outside the log: reported, never scored. Absent where there are none. */
+  passes_outside?: readonly PassContext[];
   /** Calibration of the walk's device; null where there is none. */
   device: DeviceCalibration | null;
 }

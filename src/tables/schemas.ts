@@ -30,6 +30,15 @@ export const readingsBaroTable = defineTable('readings-baro', {
   p_hPa: f64('hPa', 'air pressure'),
 });
 
+/** What reading the log brought up, a row per sensor; it has no file of its own but stands in the readings' metadata. */
+export const readingsImportTable = defineTable('readings-import', {
+  sensor: utf8('accel, gyro, mag or baro'),
+  rows: i32('readings of this sensor in the log'),
+  out_of_order: i32('readings whose time is earlier than that of the reading before them in the file'),
+  duplicate_times: i32('readings with the very time of another one'),
+  missing: i32('rows left out because a value was empty or not a number'),
+});
+
 /** What the log check noticed. */
 export const findingsTable = defineTable('findings', {
   severity: utf8('note, warn or fail'),
@@ -135,6 +144,7 @@ export type ReadingsAccel = Columns<typeof readingsAccelTable>;
 export type ReadingsGyro = Columns<typeof readingsGyroTable>;
 export type ReadingsMag = Columns<typeof readingsMagTable>;
 export type ReadingsBaro = Columns<typeof readingsBaroTable>;
+export type ReadingsImport = Columns<typeof readingsImportTable>;
 export type Findings = Columns<typeof findingsTable>;
 export type Motion = Columns<typeof motionTable>;
 export type Attitude = Columns<typeof attitudeTable>;
