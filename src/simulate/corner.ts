@@ -57,7 +57,7 @@ export class Corner {
   }
 
   #headingWith(u: number, swingRad: number, out: Curve2): void {
-    smoothHill(u < 0.5 ? 2 * u : 2 * u - 1, this.#scratch);
+    smoothHill(u < 0.5 ? 2 * u : 2 * u - 1, 4, this.#scratch);
     const sign = u < 0.5 ? -1 : 1;
     smoothStep(u, out);
     out[0] = this.turnRad * out[0] + sign * swingRad * this.#scratch[0];

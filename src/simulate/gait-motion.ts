@@ -31,8 +31,10 @@ export const FORWARD_HARMONICS = [
   { times: 2, share: 0.18, at: 0.04 },
 ] as const;
 
-/** How long the jolt of the heel strike lasts, part of a step, and when it begins. From memory: 60 ms from contact on. */
-const HEEL_PART = 0.12;
+/** How long the jolt of the heel strike lasts from contact on, part of a step: about 80 ms, half of it at its peak's foot. From memory. */
+const HEEL_PART = 0.16;
+/** So steep a hill is smooth enough at its foot that readings can be integrated at high order. */
+const HEEL_POWER = 6;
 
 /**
  * Motion of the pelvis within the steps.
@@ -61,14 +63,14 @@ export function gaitMotion(walker: WalkerModel, phase: Jet, lift: Jet): GaitMoti
 function heelStrike(walker: WalkerModel, phase: Jet): Jet {
   const out = zeroJet(phase.v.length);
   const hill: Curve2 = [0, 0, 0];
-  // The hill's second derivative at its top is -32 in units of its width; see smoothHill.
+  // The hill's second derivative at its top, in units of its width, is -8 times its power.
   const widthS = HEEL_PART / walker.cadenceHz;
   const usualLift = liftM(walker, walker.stepLengthM);
-  const height = usualLift > 0 ? (walker.heelStrikeMps2 * widthS ** 2) / 32 / usualLift : 0;
+  const height = usualLift > 0 ? (walker.heelStrikeMps2 * widthS ** 2) / (8 * HEEL_POWER) / usualLift : 0;
   for (let i = 0; i < out.v.length; i++) {
     const u = (phase.v[i]! - Math.floor(phase.v[i]!)) / HEEL_PART;
     if (u >= 1) continue;
-    smoothHill(u, hill);
+    smoothHill(u, HEEL_POWER, hill);
     const rate = phase.d[i]! / HEEL_PART;
     out.v[i] = height * hill[0];
     out.d[i] = height * hill[1] * rate;

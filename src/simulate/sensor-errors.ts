@@ -40,7 +40,7 @@ export interface SensedTriple {
 }
 
 /** Time constants of the processes that make up flicker noise, a factor of four apart, s. */
-const FLICKER_S = [0.25, 1, 4, 16, 64, 256, 1024, 4096];
+const FLICKER_S = [0.0625, 0.25, 1, 4, 16, 64, 256, 1024, 4096];
 
 /**
  * A drifting bias and white noise on true values, then clipping and quantisation.
@@ -49,7 +49,7 @@ const FLICKER_S = [0.25, 1, 4, 16, 64, 256, 1024, 4096];
  * the walk's turn-on change, temperature drift, a random walk (K) and flicker noise (B), the last as a
  * sum of first-order Gauss-Markov processes: with time constants a factor r apart and variance
  * B² ln(r) / pi each, their densities add up to B²/(pi f), whose Allan deviation is B sqrt(2 ln 2 / pi)
- * between the outer time constants (0.5 s to an hour).
+ * between the outer time constants, well from 0.5 s to an hour.
  *
  * @param truth - shape (n) each of one to three axes, in the sensor's unit u.
  * @param times - shape (n), s, ascending.

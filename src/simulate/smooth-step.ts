@@ -20,8 +20,12 @@ export function smoothStep(u: number, out: Curve2): void {
   out[2] = 420 * u2 * rest * rest * (1 - 2 * u);
 }
 
-/** A hill of height 1 over u in 0..1, (4u(1-u))^4; three derivatives vanish at both ends. */
-export function smoothHill(u: number, out: Curve2): void {
+/**
+ * A hill of height 1 over u in 0..1, (4u(1-u))^power; power - 1 derivatives vanish at both ends.
+ *
+ * @param power - a whole number from 3 on; the second derivative at the top is -8 power.
+ */
+export function smoothHill(u: number, power: number, out: Curve2): void {
   if (!(u > 0 && u < 1)) {
     out[0] = 0;
     out[1] = 0;
@@ -30,7 +34,8 @@ export function smoothHill(u: number, out: Curve2): void {
   }
   const w = 4 * u * (1 - u);
   const slope = 4 - 8 * u;
-  out[0] = w ** 4;
-  out[1] = 4 * w ** 3 * slope;
-  out[2] = 12 * w * w * slope * slope - 32 * w ** 3;
+  const low = w ** (power - 2);
+  out[0] = low * w * w;
+  out[1] = power * low * w * slope;
+  out[2] = power * low * ((power - 1) * slope * slope - 8 * w);
 }
