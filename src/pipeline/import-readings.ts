@@ -159,6 +159,7 @@ function importTable(counts: Readonly<Partial<Record<SensorName, ImportCounts>>>
 
 function logEnd(tables: ReadonlyMap<string, OnHand>): number {
   let end = 0;
-  for (const table of tables.values()) end = Math.max(end, (table.columns().t_s as Float64Array | undefined)?.at(-1) ?? 0);
+  for (const table of tables.values())
+    end = Math.max(end, (table.columns().t_s as Float64Array | undefined)?.at(-1) ?? 0);
   return end;
 }

@@ -51,7 +51,8 @@ export async function runWalk(job: WalkJob): Promise<WalkOutcome> {
     } catch (error) {
       removeTable(pathOf(stage.name));
       if (!(error instanceof LeftOut)) outcome.problem = problemOf(error, stage.name);
-      else if (i <= last && !outcome.problem) outcome.leftOut.push({ stage: stage.name, reason: error.message });
+      else if (i <= last && !outcome.problem)
+        outcome.leftOut.push({ stage: stage.name, reason: error.message });
       leftOut.set(stage.name, error instanceof LeftOut ? error.message : `${stage.name} failed`);
     }
   }

@@ -15,13 +15,17 @@ export interface Provenance {
 
 /** Schema metadata that says what made a table: all of it is text, JSON where it has parts. */
 export function provenanceMetadata(made: Provenance): Record<string, string> {
+  return { ...methodMetadata(made), 'treadline.inputs': canonicalJson(made.inputs) };
+}
+
+/** {@link provenanceMetadata} without the inputs: how a table was made, whatever of. */
+export function methodMetadata(made: Omit<Provenance, 'inputs'>): Record<string, string> {
   return {
     'treadline.version': VERSION,
     'treadline.stage': made.stage,
     'treadline.stage_version': String(made.stageVersion),
     'treadline.method': made.method,
     'treadline.settings': canonicalJson(made.settings),
-    'treadline.inputs': canonicalJson(made.inputs),
   };
 }
 

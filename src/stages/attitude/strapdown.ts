@@ -33,7 +33,7 @@ export function turnsBetween(
   const w = dt / 24;
   for (let i = from, o = 0; i < to; i++, o += 3) {
     const before = i > 0 ? i - 1 : 0;
-    const after = i + 2 <= last ? i + 2 : last;
+    const after = Math.min(i + 2, last);
     const ax = sx * (gx[i]! - bx);
     const ay = sy * (gy[i]! - by);
     const az = sz * (gz[i]! - bz);
