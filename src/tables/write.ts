@@ -1,7 +1,7 @@
 import { createHash, randomBytes } from 'node:crypto';
 import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, rmSync, writeSync } from 'node:fs';
 import { basename, dirname, join } from 'node:path';
-import { RecordBatchFileWriter, type Table } from 'apache-arrow';
+import { AsyncByteQueue, RecordBatchFileWriter, type Table } from 'apache-arrow';
 
 /** Writes all of a chunk: one `write` may take less than it was given. */
 function writeAll(fd: number, bytes: Uint8Array): void {
@@ -46,6 +46,15 @@ export function writeText(path: string, text: string): string {
   return writeWhole(path, [Buffer.from(text, 'utf8')]);
 }
 
+/** Takes a writer's chunks as they come, so that they can be written without waiting. */
+class ChunkList extends AsyncByteQueue<Uint8Array> {
+  readonly chunks: Uint8Array[] = [];
+
+  override write(chunk: Uint8Array): void {
+    if (chunk.byteLength > 0) this.chunks.push(chunk);
+  }
+}
+
 /**
  * Writes a table as an Arrow IPC file, uncompressed, whole or not at all.
  *
@@ -55,6 +64,7 @@ export function writeText(path: string, text: string): string {
  * @returns SHA-256 of the file's bytes, in hexadecimal.
  */
 export function writeTable(path: string, table: Table): string {
-  const writer = RecordBatchFileWriter.writeAll(table);
-  return writeWhole(path, writer as unknown as Iterable<Uint8Array>);
+  const list = new ChunkList();
+  new RecordBatchFileWriter().reset(list).writeAll(table);
+  return writeWhole(path, list.chunks);
 }
