@@ -1,5 +1,5 @@
 import { availableParallelism } from 'node:os';
-import { join, resolve } from 'node:path';
+import { join, relative, resolve } from 'node:path';
 import { findRecipe } from './campaign/find-recipe.js';
 import { didYouMean, listNames } from './campaign/nearest-name.js';
 import { readCampaign } from './campaign/read-campaign.js';
@@ -11,7 +11,9 @@ import { type WalkOutcome, walkJob } from './pipeline/outcome.js';
 import { runWalks } from './pipeline/run-walks.js';
 import { scoreResults } from './pipeline/score-results.js';
 import { STAGE_NAMES, STAGES } from './pipeline/stages.js';
+import { removeTable } from './tables/remove.js';
 import { writeText } from './tables/write.js';
+import { VERSION } from './version.js';
 
 export interface RunOptions {
   /** A recipe file, or the name of one in the campaign's `recipes` folder; default: every stage's own default. */
@@ -62,6 +64,7 @@ export async function runCampaign(campaignDir: string, options: RunOptions = {})
     jobs,
     (outcome) => options.onWalk?.(outcome, ++done, chosen.length),
   );
+  for (const outcome of outcomes) tellFault(resultsDir, outcome);
   scoreResults(campaign, recipe, resultsDir, new Set(chosen));
   writeRunRecord(resultsDir, recordOf(campaign, recipe, resultsDir, outcomes));
   return { campaign, recipe, resultsDir, outcomes };
@@ -116,6 +119,22 @@ function writeRecipe(resultsDir: string, recipe: Recipe): void {
   }
 }
 
+/** Where the details of a fault of ours in a walk are written. */
+export function faultFile(resultsDir: string, walk: string): string {
+  return join(resultsDir, walk, 'fault.txt');
+}
+
+/** Writes down what only we can mend; a walk without a fault keeps no such file. */
+function tellFault(resultsDir: string, { walk, problem }: WalkOutcome): void {
+  const file = faultFile(resultsDir, walk);
+  if (problem?.kind === 'fault')
+    writeText(
+      file,
+      `treadline ${VERSION}, node ${process.version}\n${walk}: ${problem.stage}\n${problem.details}\n`,
+    );
+  else removeTable(file);
+}
+
 /** The folder's record with this run's walks in it; others stay as they were under the same recipe name. */
 function recordOf(
   campaign: Campaign,
@@ -138,5 +157,9 @@ function recordOf(
     const record = now.get(walk) ?? before[walk];
     if (record) walks[walk] = record;
   }
-  return { campaign: { dir: campaign.dir, name: campaign.name }, recipe: recipe.name, walks };
+  return {
+    campaign: { dir: relative(resultsDir, campaign.dir), name: campaign.name },
+    recipe: recipe.name,
+    walks,
+  };
 }

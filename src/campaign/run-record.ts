@@ -4,7 +4,7 @@ import { writeText } from '../tables/write.js';
 
 /** `run.json` in a results folder: what the tables do not say of the run that made them. */
 export interface RunRecord {
-  /** Absolute path and name of the campaign. */
+  /** The campaign's name, and its folder as seen from the results folder. */
   campaign: { dir: string; name: string };
   recipe: string;
   /** By walk, in the campaign's order. */
