@@ -7,8 +7,7 @@ export interface TextColumn {
 }
 
 /** Control characters and marks that turn the writing direction would let a file's text draw over the terminal. */
-// biome-ignore lint/suspicious/noControlCharactersInRegex: they are what is looked for
-const UNPRINTABLE = /[\u0000-\u001f\u007f-\u009f\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
+const UNPRINTABLE = /[\p{Cc}\p{Bidi_Control}]/gu;
 
 const WIDEST_CELL = 60;
 
