@@ -37,6 +37,16 @@ const FIRST_TILT_SD = 0.3;
 /** Gyroscope noise while at rest, rad/s per sqrt(hz), for the bias measured there. */
 const REST_RATE_NOISE = 0.002;
 
+/**
+ * First guess of how fast a phone turns that seems at rest, rad/s, before it is estimated: a hand that is held still
+ * turns slowly, and too evenly to tell from a bias by the gyroscope alone. Taking that for the bias would turn the
+ * whole walk.
+ */
+const FIRST_REST_TURNING = 0.02;
+
+/** How long such a turn keeps its sense, s. */
+const REST_TURNING_MEMORY_S = 1;
+
 /** Velocity of a phone at rest, m/s. */
 const REST_VELOCITY_SD = 0.02;
 
@@ -75,7 +85,7 @@ export function smoothAttitude(
 
   const usedMagnetometer = settings.magnetometer && samples.mag !== null;
   const weights = new MagneticWeights(nodes - 1, settings);
-  const velocity = { horizontal: 1, vertical: 1 };
+  const scatter: Scatter = { horizontal: 1, vertical: 1, restTurning: FIRST_REST_TURNING };
   let biasVariance = 0.03 ** 2;
   let chain: SmoothedChain | null = null;
   for (let round = 0; round < settings.rounds; round++) {
@@ -98,14 +108,21 @@ export function smoothAttitude(
       size: SIZE,
       pattern: PATTERN,
       ...dynamics(trajectory, settings, place.gravity_mps2),
-      ...prior(trajectory, settings, biasVariance, velocity.horizontal),
-      measurements: measurements(trajectory, rest, restRate, settings, velocity, heading, weights),
+      ...prior(trajectory, settings, biasVariance, scatter.horizontal),
+      measurements: measurements(trajectory, rest, restRate, settings, scatter, heading, weights),
     });
-    reestimate(chain, trajectory, rest, settings, velocity);
+    reestimate(chain, trajectory, rest, restRate, settings, scatter);
     applyCorrections(chain, trajectory);
     biasVariance = biasVarianceOf(chain, trajectory, settings);
   }
   return { trajectory, chain: chain!, size: SIZE, magTrust: weights.trust, usedMagnetometer };
+}
+
+/** What the walk itself shows of its motion: standard deviations of the velocity, m/s, and of turning at rest, rad/s. */
+interface Scatter {
+  horizontal: number;
+  vertical: number;
+  restTurning: number;
 }
 
 /** Sets the bias to the mean rate at rest, where there is rest; returns the mean rate of each resting interval. */
@@ -229,7 +246,7 @@ function measurements(
   rest: Uint8Array,
   restRate: Float64Array,
   settings: SmootherSettings,
-  velocity: { horizontal: number; vertical: number },
+  scatter: Scatter,
   heading: MagneticHeading | null,
   weights: MagneticWeights,
 ): Measurements {
@@ -237,18 +254,21 @@ function measurements(
   const out = new Measurements(7 * nodes);
   // One value per node, though the velocity keeps its sign longer than a node: so much less each one counts.
   const repeat = Math.max(1, settings.velocity_memory_s / settings.node_s);
+  const restVariance =
+    REST_RATE_NOISE ** 2 / settings.node_s +
+    scatter.restTurning ** 2 * Math.max(1, REST_TURNING_MEMORY_S / settings.node_s);
   for (let j = 0; j < nodes; j++) {
     const interval = Math.min(j, nodes - 2);
     if (rest[interval]) {
       for (let a = 0; a < 3; a++) {
         out.addDirect(j, VELOCITY + a, 0, REST_VELOCITY_SD ** 2);
         const rate = restRate[3 * interval + a]! - bias[3 * interval + a]!;
-        out.addDirect(j, GYRO_BIAS + a, rate, REST_RATE_NOISE ** 2 / settings.node_s);
+        out.addDirect(j, GYRO_BIAS + a, rate, restVariance);
       }
     } else {
-      out.addDirect(j, VELOCITY, 0, velocity.horizontal ** 2 * repeat);
-      out.addDirect(j, VELOCITY + 1, 0, velocity.horizontal ** 2 * repeat);
-      out.addDirect(j, VELOCITY + 2, 0, velocity.vertical ** 2 * repeat);
+      out.addDirect(j, VELOCITY, 0, scatter.horizontal ** 2 * repeat);
+      out.addDirect(j, VELOCITY + 1, 0, scatter.horizontal ** 2 * repeat);
+      out.addDirect(j, VELOCITY + 2, 0, scatter.vertical ** 2 * repeat);
     }
     if (!heading || j >= nodes - 1 || fieldCount[j] === 0) continue;
     const east = field[3 * j]!;
@@ -311,27 +331,41 @@ class MagneticWeights {
   }
 }
 
-/** Expectation-maximisation step for the scatter of the velocity, over intervals that are not at rest. */
+/** Expectation-maximisation step for the scatter of the velocity in motion and of turning at rest. */
 function reestimate(
   chain: SmoothedChain,
   trajectory: Trajectory,
   rest: Uint8Array,
+  restRate: Float64Array,
   settings: SmootherSettings,
-  velocity: { horizontal: number; vertical: number },
+  scatter: Scatter,
 ): void {
   let horizontal = 0;
   let vertical = 0;
-  let used = 0;
-  for (let j = 0; j < trajectory.nodes; j++) {
-    if (rest[Math.min(j, trajectory.nodes - 2)]) continue;
+  let moving = 0;
+  let turning = 0;
+  let resting = 0;
+  for (let j = 0; j < trajectory.nodes - 1; j++) {
+    if (rest[j]) {
+      for (let a = 0; a < 3; a++) {
+        const at = j * SIZE + GYRO_BIAS + a;
+        const left = restRate[3 * j + a]! - trajectory.bias[3 * j + a]! - chain.mean[at]!;
+        turning += left ** 2 + chain.variance[at]!;
+      }
+      resting += 3;
+      continue;
+    }
     const at = j * SIZE + VELOCITY;
     for (let a = 0; a < 2; a++) horizontal += (chain.mean[at + a]! ** 2 + chain.variance[at + a]!) / 2;
     vertical += chain.mean[at + 2]! ** 2 + chain.variance[at + 2]!;
-    used++;
+    moving++;
   }
-  if (used === 0) return;
-  velocity.horizontal = Math.max(settings.velocity_sd_mps, Math.sqrt(horizontal / used));
-  velocity.vertical = Math.max(settings.velocity_sd_mps, Math.sqrt(vertical / used));
+  if (moving > 0) {
+    scatter.horizontal = Math.max(settings.velocity_sd_mps, Math.sqrt(horizontal / moving));
+    scatter.vertical = Math.max(settings.velocity_sd_mps, Math.sqrt(vertical / moving));
+  }
+  if (resting > 0)
+    scatter.restTurning = Math.sqrt(Math.max(0, turning / resting - REST_RATE_NOISE ** 2 / settings.node_s));
 }
 
 function applyCorrections(chain: SmoothedChain, trajectory: Trajectory): void {

@@ -61,7 +61,7 @@ export const fixedIntervalSmoother = defineMethod<{ motion: Motion }, Attitude, 
   source:
     'error-state model: Lefferts, Markley & Shuster (1982), J. Guidance 5(5), 417-429; smoother: Bierman (1973), ' +
     'Int. J. Control 18(1), 65-75; Student-t weights: Lange, Little & Taylor (1989), JASA 84, 881-896',
-  version: 1,
+  version: 2,
   settings: smootherSettings,
   uses: ['place'],
   run({ motion }, settings, context) {
