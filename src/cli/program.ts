@@ -40,7 +40,7 @@ export async function runProgram(args: readonly string[], io: Io): Promise<ExitC
     .help()
     .wrap(Math.min(io.width, 110))
     .strict()
-    .demandCommand(1, 1, 'Name a command; "treadline --help" lists them.', 'Name one command at a time.')
+    .demandCommand(1, 'Name a command; "treadline --help" lists them.')
     .exitProcess(false)
     // A message of its own for what yargs says in two.
     .fail((message, error) => {

@@ -1,3 +1,4 @@
+import { InputError } from '../errors.js';
 import type { Command } from './command.js';
 
 interface ShowOptions {
@@ -29,8 +30,7 @@ export const showCommand: Command<ShowOptions> = {
         type: 'string',
         requiresArg: true,
         describe: 'write the rows to this CSV file; - prints them',
-      })
-      .conflicts('csv', 'json'),
+      }),
   examples: [
     ['treadline show results/default/w03/steps.arrow --head 5', 'what it is, then five steps'],
     [
@@ -42,6 +42,7 @@ export const showCommand: Command<ShowOptions> = {
     const { readStored } = await import('../tables/read.js');
     const { filterRows } = await import('../tables/filter-rows.js');
     const { tableText } = await import('./table-text.js');
+    if (json && csv !== undefined) throw new InputError('usage', '--csv and --json: give one of them');
     const stored = readStored(file);
     const table = filterRows(stored, where);
     const wanted = head ?? (json || csv !== undefined ? 0 : 20);

@@ -1,7 +1,7 @@
 import type { WalkContext } from '../campaign/context.js';
 import type { StageChoice } from '../campaign/recipe.js';
 import { LeftOut } from '../stages/left-out.js';
-import type { AnyStage } from '../stages/stage.js';
+import { type AnyStage, partsUsed } from '../stages/stage.js';
 import { buildTable } from '../tables/build.js';
 import { hashOfValue, madeTheSame, provenanceMetadata } from '../tables/provenance.js';
 import { readStoredIfSound } from '../tables/read.js';
@@ -51,7 +51,8 @@ export function taskMetadata({ stage, choice, inputs, context }: StageTask): Rec
   const method = stage.methods[choice.method]!;
   const hashes: Record<string, string> = {};
   for (const [name, table] of inputs) hashes[name] = table.sha256;
-  for (const part of method.uses) hashes[`context.${part}`] = hashOfValue(context[part]);
+  for (const part of partsUsed(method, choice.settings))
+    hashes[`context.${part}`] = hashOfValue(context[part]);
   return provenanceMetadata({
     stage: stage.name,
     stageVersion: method.version,
@@ -72,7 +73,10 @@ export function keptTable(task: StageTask, metadata: Record<string, string>): On
 export function computeStage({ stage, choice, inputs, context }: StageTask): AnyColumns {
   const columns: Record<string, AnyColumns> = {};
   for (const [name, table] of inputs) columns[name] = table.columns();
-  return stage.methods[choice.method]!.run(columns, choice.settings, context);
+  const method = stage.methods[choice.method]!;
+  // A method that looks at more than it says would not be run again when that changes: it finds nothing there.
+  const seen = Object.fromEntries(partsUsed(method, choice.settings).map((part) => [part, context[part]]));
+  return method.run(columns, choice.settings, seen as unknown as WalkContext);
 }
 
 /** Runs the stage and writes its table. */

@@ -18,9 +18,22 @@ export interface Method<In, Out, S extends z.ZodType = z.ZodType> {
   readonly settings: S;
   /** Tables beyond the stage's own needs without which this method cannot run. */
   readonly requires?: readonly string[];
-  /** Parts of the walk's context that the result depends on; a change of any of them runs the stage again. */
-  readonly uses: readonly (keyof WalkContext)[];
+  /**
+   * Parts of the walk's context that `run` may see, with these settings; a change of any of them runs the stage
+   * again. The others are not there when it runs.
+   */
+  readonly uses: ContextParts | ((settings: z.output<S>) => ContextParts);
   run(inputs: In, settings: z.output<S>, context: WalkContext): Out;
+}
+
+export type ContextParts = readonly (keyof WalkContext)[];
+
+/** The parts of the context that a method uses with the given settings. */
+export function partsUsed<S extends z.ZodType>(
+  method: Pick<Method<never, unknown, S>, 'uses'>,
+  settings: z.output<S>,
+): ContextParts {
+  return typeof method.uses === 'function' ? method.uses(settings) : method.uses;
 }
 
 /** A pure function from tables to one table, named after the table it writes. */

@@ -41,7 +41,7 @@ export const deadReckoning = defineMethod<PathInputs, Path, typeof settingsSchem
   source: 'dead reckoning: common practice, no source; anchors: Bierman (1973), Int. J. Control 18(1), 65-75',
   version: 1,
   settings: settingsSchema,
-  uses: ['start', 'passes'],
+  uses: ({ anchors }) => (anchors === 'all' ? ['start', 'passes'] : ['start']),
   run({ steps, strides, headings }, settings, context) {
     const start = context.start;
     const legs = legsFrom(steps, strides, headings, start?.t_s ?? null);
