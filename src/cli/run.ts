@@ -72,7 +72,13 @@ export const runCommand: Command<RunOptions> = {
       for (const fail of outcome.fails) io.err(`${paint(io, 'red', 'fail')} ${outcome.walk}: ${fail}\n`);
     }
     const { leftOutLines, madeLine } = await import('./run-summary.js');
-    if (!quiet) for (const line of leftOutLines(outcomes)) io.err(`${line}\n`);
+    if (!quiet) {
+      for (const line of leftOutLines(outcomes)) io.err(`${line}\n`);
+      if (result.campaign.grid.origin === null && result.campaign.grid.declinationDeg === null)
+        io.err(
+          'note: grid north is taken to be magnetic north; give grid.declination_deg, or grid.origin and grid.date, in campaign.yaml\n',
+        );
+    }
     const { readResults } = await import('../pipeline/read-results.js');
     const results = readResults(resultsDir);
     if (json) {
@@ -80,7 +86,7 @@ export const runCommand: Command<RunOptions> = {
       io.out(`${JSON.stringify(resultsJson(results), null, 2)}\n`);
     } else {
       const { scoreText } = await import('./score-text.js');
-      io.out(scoreText(results, 'groups'));
+      if (outcomes.some(({ problem }) => problem === null)) io.out(scoreText(results, 'groups'));
       if (!quiet) io.err(`${madeLine(outcomes, resultsDir)}\n`);
     }
     return runExitCode(outcomes);
