@@ -47,9 +47,9 @@ describe('weinberg', () => {
     const length = strides.length_m[10]!;
     expect(length).toBeGreaterThan(Math.min(byLiterature, byNorm));
     expect(length).toBeLessThan(Math.max(byLiterature, byNorm));
-    // Wider than any calibrated walker's: both sources together leave 7.7 percent, and a step's own 6.
+    // Wider than any calibrated walker's: both sources together leave 7.2 percent, and a step's own 6.
     expect(strides.sd_m[10]! / length).toBeCloseTo(
-      Math.hypot(1 / Math.sqrt(0.12 ** -2 + 0.1 ** -2), 0.06),
+      Math.hypot(1 / Math.sqrt(0.17 ** -2 + 0.08 ** -2), 0.06),
       12,
     );
   });
@@ -78,5 +78,12 @@ describe('gait norm', () => {
     // Source: Bohannon & Andrews 2011 and Öberg 1993 as cited in the source: 1.36 / 2.03 = 0.670 m.
     expect(normStepLength(2.03, null)).toBeCloseTo(0.67, 3);
     expect(normStepLength(2.03, 1.87) / normStepLength(2.03, 1.7)).toBeCloseTo(1.1, 12);
+  });
+
+  test('a pace near the comfortable one says little, a slow one makes steps short in proportion', () => {
+    expect(Math.abs(normStepLength(1.95, null) / normStepLength(2.03, null) - 1)).toBeLessThan(0.01);
+    // At one step a second nobody walks at an able adult's own pace: the walk ratio holds, 1 / 2.03 of the length.
+    expect(normStepLength(1, null) / normStepLength(2.03, null)).toBeCloseTo(1 / 2.03, 3);
+    expect(normStepLength(1.5, null)).toBeLessThan(normStepLength(1.8, null));
   });
 });
