@@ -1,6 +1,14 @@
+import { existsSync } from 'node:fs';
 import { hashLog, readLog } from '../campaign/read-log.js';
 import type { ImportCounts, LogReadings } from '../campaign/readings.js';
-import { type Campaign, SENSOR_NAMES, type SensorName, type TimeUnit, type Walk } from '../campaign/types.js';
+import {
+  type Campaign,
+  type LogLayout,
+  SENSOR_NAMES,
+  type SensorName,
+  type TimeUnit,
+  type Walk,
+} from '../campaign/types.js';
 import type { LogSpan } from '../campaign/walk-context.js';
 import { InputError } from '../errors.js';
 import { buildTable } from '../tables/build.js';
@@ -59,21 +67,10 @@ export async function importReadings(
   resultsDir: string,
   again: boolean,
 ): Promise<ImportedReadings> {
+  const kept = again ? null : await keptReadings(campaign, walk, resultsDir);
+  if (kept) return kept;
   const layout = layoutOf(campaign, walk);
-  const pathOf = (sensor: SensorName) => tablePath(resultsDir, walk.walk, READINGS_TABLES[sensor].name);
-  const made = (sensor: SensorName, sha256: string) =>
-    provenanceMetadata({
-      stage: READINGS_TABLES[sensor].name,
-      stageVersion: IMPORT_VERSION,
-      method: 'import',
-      settings: layout,
-      inputs: { log: sha256 },
-    });
-  if (!again) {
-    const sha256 = await hashLog(campaign.dir, walk, layout);
-    const kept = storedReadings(pathOf, (sensor) => made(sensor, sha256));
-    if (kept) return kept;
-  }
+  const pathOf = readingsPaths(walk, resultsDir);
   const log = await readLog(campaign.dir, walk, layout);
   const present = SENSOR_NAMES.filter((sensor) => log[sensor] !== null);
   const tables = new Map<string, OnHand>();
@@ -85,7 +82,7 @@ export async function importReadings(
       continue;
     }
     const metadata = {
-      ...made(sensor, log.sha256),
+      ...importMetadata(layout, sensor, log.sha256),
       t0: log.t0.value,
       t0_unit: log.t0.unit,
       'treadline.import': canonicalJson(log.counts[sensor]),
@@ -102,6 +99,33 @@ export async function importReadings(
     made: [...tables.keys()].filter((name) => name !== 'readings-import'),
     kept: [],
   };
+}
+
+/** The walk's readings on disk where all of them were made of this very log and layout; else null. */
+export async function keptReadings(
+  campaign: Campaign,
+  walk: Walk,
+  resultsDir: string,
+): Promise<ImportedReadings | null> {
+  const layout = layoutOf(campaign, walk);
+  const pathOf = readingsPaths(walk, resultsDir);
+  if (!SENSOR_NAMES.some((sensor) => existsSync(pathOf(sensor)))) return null;
+  const sha256 = await hashLog(campaign.dir, walk, layout);
+  return storedReadings(pathOf, (sensor) => importMetadata(layout, sensor, sha256));
+}
+
+function readingsPaths(walk: Walk, resultsDir: string) {
+  return (sensor: SensorName) => tablePath(resultsDir, walk.walk, READINGS_TABLES[sensor].name);
+}
+
+function importMetadata(layout: LogLayout, sensor: SensorName, sha256: string): Record<string, string> {
+  return provenanceMetadata({
+    stage: READINGS_TABLES[sensor].name,
+    stageVersion: IMPORT_VERSION,
+    method: 'import',
+    settings: layout,
+    inputs: { log: sha256 },
+  });
 }
 
 /** Readings in memory only, for a look at a log without writing anything. */

@@ -1,8 +1,8 @@
 import { problemOf, type WalkJob, type WalkOutcome } from './outcome.js';
-import { runWalk } from './run-walk.js';
+import { keptWalk, runWalk } from './run-walk.js';
 
 /**
- * Runs walks, several at a time, each in a worker thread of its own.
+ * Runs walks, several at a time, each in a worker thread of its own; those that stand already are only looked at.
  *
  * @param jobs - the walks.
  * @param workers - how many at a time; 1 runs them here, without a thread.
@@ -18,11 +18,18 @@ export async function runWalks(
     onWalk(outcome);
     return outcome;
   };
-  const threads = Math.min(workers, jobs.length);
+  const outcomes = new Array<WalkOutcome>(jobs.length);
+  const open: number[] = [];
+  for (const [i, job] of jobs.entries()) {
+    // Looking is quick, and threads take a while to start: they get only what there is to do.
+    const kept = await keptWalk(job);
+    if (kept) outcomes[i] = told(kept);
+    else open.push(i);
+  }
+  const threads = Math.min(workers, open.length);
   if (threads <= 1) {
-    const outcomes: WalkOutcome[] = [];
-    for (const job of jobs) {
-      outcomes.push(told(await runWalk(job)));
+    for (const i of open) {
+      outcomes[i] = told(await runWalk(jobs[i]!));
       // Lets timers and signals through between walks.
       await new Promise((resolve) => setImmediate(resolve));
     }
@@ -38,17 +45,19 @@ export async function runWalks(
     ...(isSource ? { execArgv: ['--import', 'tsx'] } : {}),
   });
   try {
-    return await Promise.all(
-      jobs.map(async (job) => {
+    await Promise.all(
+      open.map(async (i) => {
+        const job = jobs[i]!;
         try {
-          return told((await pool.run(job)) as WalkOutcome);
+          outcomes[i] = told((await pool.run(job)) as WalkOutcome);
         } catch (error) {
           // The thread itself died, e.g. for want of memory; runWalk never throws.
           const problem = problemOf(error, 'worker');
-          return told({ walk: job.walk, made: [], kept: [], leftOut: [], problem, fails: [] });
+          outcomes[i] = told({ walk: job.walk, made: [], kept: [], leftOut: [], problem, fails: [] });
         }
       }),
     );
+    return outcomes;
   } finally {
     await pool.destroy();
   }
