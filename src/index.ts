@@ -142,6 +142,7 @@ export { type FindingsInputs, findingsStage } from './stages/findings/index.js';
 export { logCheck } from './stages/findings/methods/log-check.js';
 export { type HeadingsInputs, headingsStage } from './stages/headings/index.js';
 export { deviceAxis } from './stages/headings/methods/device-axis.js';
+export { trackedOffset } from './stages/headings/methods/tracked-offset.js';
 export { LeftOut } from './stages/left-out.js';
 export { type MotionInputs, motionStage } from './stages/motion/index.js';
 export { uniformGrid } from './stages/motion/methods/uniform-grid.js';
@@ -154,7 +155,6 @@ export { adaptivePeakValley } from './stages/steps/methods/adaptive-peak-valley.
 export { type StridesInputs, stridesStage } from './stages/strides/index.js';
 export { weinberg } from './stages/strides/methods/weinberg.js';
 export { type AllanDeviation, type AllanKind, allanDeviation } from './stats/allan.js';
-// Statistics
 export { equivalentDegreesOfFreedom } from './stats/allan-degrees.js';
 export {
   type BootstrapInterval,
@@ -163,6 +163,13 @@ export {
   type IndexStatistics,
 } from './stats/bootstrap.js';
 export { chiSquareCdf, chiSquareQuantile } from './stats/chi-square.js';
+// Statistics
+export {
+  type CircleChain,
+  type CircleMove,
+  type SmoothedCircle,
+  smoothOnCircle,
+} from './stats/circle-smoother.js';
 export { type CircularMean, circularMean, wrapToPi, wrapToTurn } from './stats/circular.js';
 export { type Clusters, drawClusters, groupByCluster, largestCluster } from './stats/cluster-resampling.js';
 export {

@@ -4,7 +4,8 @@ import type { Attitude } from '../../tables/schemas.js';
  * Where the device points over the ground at each row, as a horizontal unit vector (east, north).
  *
  * The top of the screen, and as it is raised beyond 55 degrees more and more the back of the device, which from 75
- * degrees on alone counts: near upright the top's horizontal part is too short to tell a direction.
+ * degrees on alone counts: near upright the top's horizontal part is too short to tell a direction. As the top is
+ * lowered below level the screen takes the back's place.
  *
  * @returns two arrays of shape (rows).
  */
@@ -18,9 +19,10 @@ export function deviceDirection(attitude: Attitude): { east: Float64Array; north
     const y = attitude.qy[i]!;
     const z = attitude.qz[i]!;
     const topUp = 2 * (y * z + w * x);
-    const raised = Math.max(0, Math.min(1, (topUp - RAISED_FROM) / (RAISED_TO - RAISED_FROM)));
-    let e = (1 - raised) * 2 * (x * y - w * z) - raised * 2 * (x * z + w * y);
-    let nn = (1 - raised) * (1 - 2 * (x * x + z * z)) - raised * 2 * (y * z - w * x);
+    const raised = Math.max(0, Math.min(1, (Math.abs(topUp) - RAISED_FROM) / (RAISED_TO - RAISED_FROM)));
+    const back = topUp < 0 ? -raised : raised;
+    let e = (1 - raised) * 2 * (x * y - w * z) - back * 2 * (x * z + w * y);
+    let nn = (1 - raised) * (1 - 2 * (x * x + z * z)) - back * 2 * (y * z - w * x);
     const length = Math.sqrt(e * e + nn * nn);
     e = length > 0 ? e / length : 0;
     nn = length > 0 ? nn / length : 1;

@@ -7,6 +7,7 @@ import {
 } from '../../tables/schemas.js';
 import { defineStage } from '../stage.js';
 import { deviceAxis } from './methods/device-axis.js';
+import { trackedOffset } from './methods/tracked-offset.js';
 
 export interface HeadingsInputs {
   steps: Steps;
@@ -19,6 +20,6 @@ export const headingsStage = defineStage<HeadingsInputs, Headings>({
   name: 'headings',
   table: headingsTable,
   reads: ['steps', 'motion', 'attitude'],
-  methods: [deviceAxis],
-  defaultMethod: deviceAxis.name,
+  methods: [trackedOffset, deviceAxis],
+  defaultMethod: trackedOffset.name,
 });

@@ -1,11 +1,12 @@
 import { z } from 'zod';
-import type { StartContext } from '../../../campaign/context.js';
-import { circularMean, wrapToPi, wrapToTurn } from '../../../stats/circular.js';
-import type { Headings, Steps } from '../../../tables/schemas.js';
+import { wrapToPi, wrapToTurn } from '../../../stats/circular.js';
+import type { Headings } from '../../../tables/schemas.js';
 import { defineMethod } from '../../stage.js';
 import { deviceDirection } from '../device-direction.js';
 import type { HeadingsInputs } from '../index.js';
-import { meanOverSteps } from '../mean-over-steps.js';
+import { meanOverIntervals } from '../mean-over-intervals.js';
+import { startOffset } from '../start-offset.js';
+import { yawSdAt } from '../yaw-sd-at.js';
 
 const settingsSchema = z.strictObject({
   /** Walking direction minus the device's direction, clockwise, where the start heading does not tell it. */
@@ -29,14 +30,14 @@ const settingsSchema = z.strictObject({
 export const deviceAxis = defineMethod<HeadingsInputs, Headings, typeof settingsSchema>({
   name: 'device-axis',
   source: 'common practice of pedestrian dead reckoning with a phone held in front of the body, no source',
-  version: 1,
+  version: 2,
   settings: settingsSchema,
   uses: ['start'],
   run({ steps, attitude }, settings, context) {
     const n = steps.t_s.length;
     const { east, north } = deviceDirection(attitude);
-    const direction = meanOverSteps(attitude.t_s, east, north, steps);
-    const fromStart = offsetFromStart(direction, steps, context.start, settings.start_steps);
+    const direction = meanOverIntervals(attitude.t_s, east, north, steps.start_s, steps.end_s);
+    const fromStart = startOffset(direction, steps, context.start, settings.start_steps)?.offsetRad ?? null;
     const offset = fromStart ?? (settings.offset_deg * Math.PI) / 180;
     const constantSd =
       ((fromStart === null ? settings.offset_sd_deg : settings.start_sd_deg) * Math.PI) / 180;
@@ -57,25 +58,3 @@ export const deviceAxis = defineMethod<HeadingsInputs, Headings, typeof settings
     };
   },
 });
-
-/** Offset that brings the first steps after the start to the given heading; null where none is given or no step follows. */
-function offsetFromStart(
-  direction: Float64Array,
-  steps: Steps,
-  start: StartContext | null,
-  startSteps: number,
-): number | null {
-  if (!start || start.heading_rad === null) return null;
-  let first = 0;
-  if (start.t_s !== null) while (first < direction.length && steps.t_s[first]! < start.t_s) first++;
-  const used = direction.subarray(first, first + startSteps);
-  if (used.length === 0) return null;
-  const mean = circularMean(used).directionRad;
-  return mean === null ? null : wrapToPi(start.heading_rad - mean);
-}
-
-function yawSdAt(attitude: HeadingsInputs['attitude'], t: number): number {
-  const rows = attitude.t_s.length;
-  const stepS = rows > 1 ? (attitude.t_s[rows - 1]! - attitude.t_s[0]!) / (rows - 1) : 1;
-  return attitude.yaw_sd_rad[Math.max(0, Math.min(rows - 1, Math.round((t - attitude.t_s[0]!) / stepS)))]!;
-}

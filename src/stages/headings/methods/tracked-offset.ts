@@ -1,0 +1,185 @@
+import { z } from 'zod';
+import { type CircleMove, smoothOnCircle } from '../../../stats/circle-smoother.js';
+import { wrapToPi, wrapToTurn } from '../../../stats/circular.js';
+import type { Headings, Steps } from '../../../tables/schemas.js';
+import { defineMethod } from '../../stage.js';
+import { type CarryPrior, carryPrior } from '../carry-prior.js';
+import { type CarrySpell, carrySpells } from '../carry-spells.js';
+import { deviceDirection } from '../device-direction.js';
+import type { HeadingsInputs } from '../index.js';
+import { meanOverIntervals } from '../mean-over-intervals.js';
+import { motionEvidence } from '../motion-evidence.js';
+import { startOffset } from '../start-offset.js';
+import { strideMotion } from '../stride-motion.js';
+import { withoutSway } from '../without-sway.js';
+import { yawSdAt } from '../yaw-sd-at.js';
+
+const settingsSchema = z.strictObject({
+  /** Whether the phone's motion tells the walking direction, or only the way it is carried and a given start heading. */
+  motion: z.boolean().default(true),
+  /** Random walk of the offset within a carry, degrees per square root of a step: hands drift, pockets slip. */
+  offset_walk_deg: z.number().positive().default(0.3),
+  /** Scatter of a single step. */
+  step_sd_deg: z.number().positive().default(1.5),
+  /** First steps after the start whose mean direction is set to the start heading: two strides, so sway averages out. */
+  start_steps: z.int().min(1).max(20).default(4),
+  /** Standard deviation of a given start heading against those steps. */
+  start_sd_deg: z.number().positive().default(2),
+  /** How far people turn while they move the phone from one place to another. */
+  handling_turn_deg: z.number().positive().default(25),
+});
+
+type Settings = z.output<typeof settingsSchema>;
+
+const CELL_RAD = (2 * Math.PI) / 180;
+const BINS = 180;
+
+/** Probability, per step, that the phone is turned in the hand or bag with its lie unchanged. */
+const TURNED_SHARE = 3e-4;
+
+/** Probability that a start heading, or the straight course while the phone is moved, is not as said. */
+const WRONG_SHARE = 0.05;
+const TURNED_WALKER_SHARE = 0.2;
+
+/**
+ * Walking direction = direction of the device over the ground plus an offset that is tracked through the walk.
+ *
+ * The belief about the offset begins with what the carry tells; a start heading, the axis of horizontal motion at the
+ * step rate and its sense by the gait's phase, per stride, sharpen it forwards and backwards in time. Where gravity in the
+ * device shows that the phone was moved to another place, the offset is open again but for the walker's course,
+ * which goes on about straight.
+ */
+export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof settingsSchema>({
+  name: 'tracked-offset',
+  source:
+    'principal axis of horizontal acceleration, sense by gait phase: Kunze, Lukowicz, Partridge & Begole (2009), ' +
+    'ISWC, 103-106; smoothing of beliefs: Rabiner (1989), Proceedings of the IEEE 77(2), 257-286',
+  version: 1,
+  settings: settingsSchema,
+  uses: ['start', 'carry'],
+  run({ steps, motion, attitude }, settings, context) {
+    const n = steps.t_s.length;
+    const { east, north } = deviceDirection(attitude);
+    const spells = carrySpells(attitude, steps);
+    const whole = meanOverIntervals(attitude.t_s, east, north, steps.start_s, steps.end_s);
+    const direction = swayRemoved(whole, steps, spells);
+    const priors = spells.map(({ up }, i) => carryPrior(i === 0 ? context.carry : null, up));
+    const logLikelihood = new Float64Array(n * BINS);
+    const axisWeight = new Float64Array(spells.length);
+    if (settings.motion) {
+      const strideFrom = steps.t_s.map((t, k) => (k > 0 ? steps.t_s[k - 1]! : t));
+      const strideTo = steps.t_s.map((t, k) => (k + 1 < n ? steps.t_s[k + 1]! : t));
+      const along = meanOverIntervals(attitude.t_s, east, north, strideFrom, strideTo);
+      const strides = strideMotion(motion, attitude, steps, along);
+      for (const [i, { from, to }] of spells.entries()) {
+        const seen = motionEvidence(strides, from, to, priors[i]!.axisSdRad);
+        for (let k = from; k < to; k++) {
+          // Told along the stride's mean direction; the table's is the step's.
+          const shift = wrapToPi(along[k]! - direction[k]!);
+          addMotion(logLikelihood.subarray(k * BINS, (k + 1) * BINS), seen, k - from, shift);
+          axisWeight[i]! += 4 * Math.hypot(seen.axisCos[k - from]!, seen.axisSin[k - from]!);
+        }
+      }
+    }
+    const start = startOffset(direction, steps, context.start, settings.start_steps);
+    if (start) {
+      const row = logLikelihood.subarray((start.to - 1) * BINS, start.to * BINS);
+      addAngle(row, start.offsetRad, radians(settings.start_sd_deg), WRONG_SHARE);
+    }
+    const fresh = priors.map(distribution);
+    const smoothed = smoothOnCircle({
+      bins: BINS,
+      logLikelihood,
+      prior: fresh[0] ?? new Float64Array(BINS).fill(1 / BINS),
+      moves: movesOf(spells, direction, fresh, settings),
+    });
+    const step2 = radians(settings.step_sd_deg) ** 2;
+    const heading_rad = new Float64Array(n);
+    const sd_rad = new Float64Array(n);
+    const source: string[] = [];
+    for (const [i, { from, to }] of spells.entries())
+      for (let k = from; k < to; k++) {
+        heading_rad[k] = wrapToTurn(direction[k]! + smoothed.mean[k]!);
+        const yaw = start ? 0 : yawSdAt(attitude, steps.t_s[k]!);
+        sd_rad[k] = Math.sqrt(yaw * yaw + step2 + smoothed.sd[k]! ** 2);
+        source.push(axisWeight[i]! * priors[i]!.sdRad ** 2 > 1 ? 'motion' : 'device-axis');
+      }
+    const offset_rad = heading_rad.map((heading, k) => wrapToPi(heading - whole[k]!));
+    return { step: steps.step.slice(), heading_rad, sd_rad, offset_rad, source };
+  },
+});
+
+function radians(degrees: number): number {
+  return (degrees * Math.PI) / 180;
+}
+
+/** Sway taken out of each stretch of one bout in one spell. */
+function swayRemoved(direction: Float64Array, steps: Steps, spells: readonly CarrySpell[]): Float64Array {
+  const out = direction.slice();
+  for (const spell of spells)
+    for (let from = spell.from; from < spell.to; ) {
+      let to = from + 1;
+      while (to < spell.to && steps.bout[to] === steps.bout[from]) to++;
+      out.set(withoutSway(direction.subarray(from, to)), from);
+      from = to;
+    }
+  return out;
+}
+
+function addMotion(
+  row: Float64Array,
+  seen: ReturnType<typeof motionEvidence>,
+  k: number,
+  shift: number,
+): void {
+  for (let b = 0; b < BINS; b++) {
+    const p = b * CELL_RAD - shift;
+    row[b]! +=
+      seen.axisCos[k]! * Math.cos(2 * p) +
+      seen.axisSin[k]! * Math.sin(2 * p) +
+      seen.senseCos[k]! * Math.cos(p) +
+      seen.senseSin[k]! * Math.sin(p);
+  }
+}
+
+function addAngle(row: Float64Array, angle: number, sd: number, wrongShare: number): void {
+  const scale = CELL_RAD / (sd * Math.sqrt(2 * Math.PI));
+  for (let b = 0; b < BINS; b++) {
+    const z = wrapToPi(b * CELL_RAD - angle) / sd;
+    row[b]! += Math.log((1 - wrongShare) * scale * Math.exp(-0.5 * z * z) + wrongShare / BINS);
+  }
+}
+
+function distribution(prior: CarryPrior): Float64Array {
+  const out = new Float64Array(BINS).fill(prior.openShare / BINS);
+  for (const near of prior.near) {
+    const peak = new Float64Array(BINS);
+    addAngle(peak, near, prior.sdRad, 0);
+    for (let b = 0; b < BINS; b++)
+      out[b]! += ((1 - prior.openShare) / prior.near.length) * Math.exp(peak[b]!);
+  }
+  let sum = 0;
+  for (const value of out) sum += value;
+  return out.map((value) => value / sum);
+}
+
+function movesOf(
+  spells: readonly CarrySpell[],
+  direction: Float64Array,
+  fresh: readonly Float64Array[],
+  settings: Settings,
+): CircleMove[] {
+  const moves: CircleMove[] = [];
+  for (const [i, { from, to }] of spells.entries())
+    for (let k = from; k < to; k++) {
+      if (k === 0) continue;
+      const changed = k === from;
+      moves.push({
+        shiftRad: changed ? wrapToPi(direction[k - 1]! - direction[k]!) : 0,
+        sdRad: radians(changed ? settings.handling_turn_deg : settings.offset_walk_deg),
+        freshShare: changed ? TURNED_WALKER_SHARE : TURNED_SHARE,
+        fresh: fresh[i]!,
+      });
+    }
+  return moves;
+}
