@@ -13,6 +13,8 @@ export interface WalkContext {
   passes: readonly PassContext[];
   /** Passes more than a second outside the log: reported, never scored. Absent where there are none. */
   passes_outside?: readonly PassContext[];
+  /** The floor that is walked on, from the floor plan; absent where there is none. */
+  floor?: FloorContext;
   /** Calibration of the walk's device; null where there is none. */
   device: DeviceCalibration | null;
 }
@@ -59,6 +61,14 @@ export interface StartContext {
   sigma_s: number;
   /** Walking direction at the start, clockwise from grid north; null where unknown. */
   heading_rad: number | null;
+}
+
+export interface FloorContext {
+  /**
+   * Which way walls and corridors run: 90 shares of their length, sum 1, share i from i to i + 1 degrees clockwise from
+   * grid north, modulo 90.
+   */
+  wall_share: readonly number[];
 }
 
 export interface PassContext {

@@ -13,6 +13,7 @@ import { readSurvey } from './survey.js';
 import type { Campaign, Walk } from './types.js';
 import { readWalkers } from './walkers.js';
 import { readWalks } from './walks.js';
+import { wallEdges } from './wall-edges.js';
 
 /** Truth files by walk; one for a walk that walks.csv does not have is a problem: its name is likely misspelt. */
 function truthFiles(
@@ -69,7 +70,10 @@ export function readCampaign(dir: string): Campaign {
   const stepTruth = readStepTruth(root, walks, problems);
   const attitudeTruth = truthFiles(root, 'attitude-truth', walks, problems);
   const pathTruth = truthFiles(root, 'path-truth', walks, problems);
-  const floorPlan = problems.attempt(() => findStored(root, 'floor-plan.geojson'))?.path ?? null;
+  const floorPlan = problems.attempt(() => findStored(root, 'floor-plan.geojson')) ?? null;
+  const walls =
+    floorPlan &&
+    problems.attempt(() => wallEdges(readCampaignText(floorPlan.path, floorPlan.file), floorPlan.file));
   const deviceCalibrations = filesByName(root, 'calibrations', 'device-', ['.yaml'], problems);
   const walkerCalibrations = filesByName(root, 'calibrations', 'walker-', ['.yaml'], problems);
   problems.throwIfAny('campaign');
@@ -84,7 +88,8 @@ export function readCampaign(dir: string): Campaign {
     stepTruth,
     attitudeTruth,
     pathTruth,
-    floorPlan,
+    floorPlan: floorPlan?.path ?? null,
+    wallEdges: walls ?? new Map(),
     deviceCalibrations,
     walkerCalibrations,
   };

@@ -20,6 +20,8 @@ export interface Campaign {
   pathTruth: ReadonlyMap<string, string>;
   /** floor-plan.geojson (or .gz), absolute; null where there is none. */
   floorPlan: string | null;
+  /** The floor plan's edges by level, `""` for all levels together; empty where there is no plan. */
+  wallEdges: ReadonlyMap<string, Float64Array>;
   /** Calibration files by device and by walker, absolute. */
   deviceCalibrations: ReadonlyMap<string, string>;
   walkerCalibrations: ReadonlyMap<string, string>;

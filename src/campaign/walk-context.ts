@@ -1,5 +1,6 @@
 import { InputError } from '../errors.js';
-import type { PassContext, StartContext, WalkContext, WalkerContext } from './context.js';
+import { edgeDirections } from '../geometry/edge-directions.js';
+import type { FloorContext, PassContext, StartContext, WalkContext, WalkerContext } from './context.js';
 import { placeOf } from './place.js';
 import { readDeviceCalibration, readStepConstants } from './read-calibration.js';
 import { secondsSinceStart } from './seconds-since-start.js';
@@ -27,6 +28,7 @@ export interface LogSpan {
 export function walkContext(campaign: Campaign, walk: Walk, span: LogSpan): WalkContext {
   const passes = passesOf(campaign, walk, span);
   const start = startOf(campaign, walk, passes.inside, passes.outside);
+  const floor = floorOf(campaign, walk, start);
   const device = walk.device === null ? undefined : campaign.deviceCalibrations.get(walk.device);
   return {
     carry: walk.carry,
@@ -35,8 +37,20 @@ export function walkContext(campaign: Campaign, walk: Walk, span: LogSpan): Walk
     start,
     passes: passes.inside.map((pass) => (isPassOf(start, pass) ? { ...pass, role: 'anchor' } : pass)),
     ...(passes.outside.length > 0 ? { passes_outside: passes.outside } : {}),
+    ...(floor ? { floor } : {}),
     device: device === undefined ? null : readDeviceCalibration(device),
   };
+}
+
+/** How far around its start a walk meets walls: the shorter ones of a trial stay within some fifty metres. */
+const WALLS_REACH_M = 30;
+
+function floorOf(campaign: Campaign, walk: Walk, start: StartContext | null): FloorContext | null {
+  // Floors of one building mostly run alike: a level that the plan does not have takes them together.
+  const edges = campaign.wallEdges.get(walk.level ?? '') ?? campaign.wallEdges.get('');
+  const near = start && { east: start.east_m, north: start.north_m };
+  const wall_share = edges ? edgeDirections(edges, near, WALLS_REACH_M) : null;
+  return wall_share && { wall_share };
 }
 
 function walkerOf(campaign: Campaign, walk: Walk): WalkerContext {

@@ -99,7 +99,7 @@ test('a full campaign, gzipped tables included', () => {
     'attitude-truth/a1.csv': '',
     'attitude-truth/README': '',
     'path-truth/a1.csv.gz': '',
-    'floor-plan.geojson.gz': '',
+    'floor-plan.geojson.gz': gzipSync('{"type": "FeatureCollection", "features": []}'),
     'calibrations/device-p.yaml': '',
     'calibrations/walker-w1.yaml': '',
   });

@@ -69,6 +69,89 @@ describe('tracked-offset on simulated walks', () => {
   });
 });
 
+describe('walls of the floor plan', () => {
+  /** A quiet walk held flat on which the device points 12 degrees off the walls, and the yaw is good to 10. */
+  function walkBeside(wallDegree: number | null, settings: object, start: boolean) {
+    const n = 60;
+    const t_s = Float64Array.from({ length: n }, (_, k) => 0.5 + 0.5 * k);
+    const rows = Float64Array.from({ length: 1600 }, (_, i) => i / 50);
+    const fill = (value: number) => new Float64Array(rows.length).fill(value);
+    const corner = (t: number) => (t < 15 ? 0 : 90);
+    const half = rows.map((t) => ((-(12 + corner(t)) * Math.PI) / 180) * 0.5);
+    const attitude = {
+      t_s: rows,
+      qw: half.map(Math.cos),
+      qx: fill(0),
+      qy: fill(0),
+      qz: half.map(Math.sin),
+      bgx_radps: fill(0),
+      bgy_radps: fill(0),
+      bgz_radps: fill(0),
+      mag_trust: fill(0),
+      tilt_sd_rad: fill(0),
+      yaw_sd_rad: fill((10 * Math.PI) / 180),
+    };
+    const motion = {
+      t_s: rows,
+      ax_mps2: fill(0),
+      ay_mps2: fill(0),
+      az_mps2: fill(9.81),
+      gap: rows.map(() => 0),
+    };
+    const steps = {
+      step: Int32Array.from({ length: n }, (_, k) => k + 1),
+      t_s,
+      start_s: t_s.map((t) => t - 0.25),
+      end_s: t_s.map((t) => t + 0.25),
+      strength_mps2: new Float64Array(n).fill(3),
+      confidence: new Float64Array(n).fill(1),
+      bout: new Int32Array(n).fill(1),
+    };
+    const method = headingsStage.methods['tracked-offset']!;
+    const headings = method.run(
+      { steps, motion, attitude } as unknown as Parameters<typeof method.run>[0],
+      method.settings.parse(settings),
+      walkContext({
+        ...(wallDegree === null
+          ? {}
+          : { floor: { wall_share: Array.from({ length: 90 }, (_, i) => (i === wallDegree ? 1 : 0)) } }),
+        start: start
+          ? {
+              checkpoint: 's',
+              east_m: 0,
+              north_m: 0,
+              sigma_m: 0.1,
+              t_s: null,
+              sigma_s: 0,
+              heading_rad: (12 * Math.PI) / 180,
+            }
+          : null,
+      }),
+    );
+    return {
+      headingDeg: (headings.heading_rad[10]! * 180) / Math.PI,
+      sdDeg: (headings.sd_rad[10]! * 180) / Math.PI,
+    };
+  }
+
+  test('draw a doubtful yaw to the corridor, and make it surer', () => {
+    const without = walkBeside(null, {}, false);
+    const beside = walkBeside(0, {}, false);
+    expect(without.headingDeg).toBeCloseTo(12, 1);
+    expect(Math.abs(beside.headingDeg)).toBeLessThan(5);
+    expect(beside.sdDeg).toBeLessThan(0.7 * without.sdDeg);
+  });
+
+  test('count for nothing where the recipe says so', () => {
+    expect(walkBeside(0, { dominant_directions: 'none' }, false).headingDeg).toBeCloseTo(12, 1);
+  });
+
+  test('do not overrule a start heading that is half a right angle off: the belief falls back to it', () => {
+    const off = walkBeside(57, {}, true);
+    expect(off.headingDeg).toBeCloseTo(12, 0);
+  });
+});
+
 test('no steps, no headings', () => {
   const none = new Float64Array(0);
   const steps = {

@@ -11,6 +11,7 @@ import { meanOverIntervals } from '../mean-over-intervals.js';
 import { motionEvidence } from '../motion-evidence.js';
 import { startOffset } from '../start-offset.js';
 import { strideMotion } from '../stride-motion.js';
+import { alongWalls, legWeights } from '../wall-evidence.js';
 import { withoutSway } from '../without-sway.js';
 import { yawSdAt } from '../yaw-sd-at.js';
 
@@ -25,6 +26,11 @@ const settingsSchema = z.strictObject({
   start_steps: z.int().min(1).max(20).default(4),
   /** Standard deviation of a given start heading against those steps. */
   start_sd_deg: z.number().positive().default(2),
+  /**
+   * Directions that legs are likelier to have: of the floor plan's walls (`floor`, where the campaign has a plan), or
+   * `none`.
+   */
+  dominant_directions: z.enum(['floor', 'none']).default('floor'),
   /** How far people turn while they move the phone from one place to another. */
   handling_turn_deg: z.number().positive().default(25),
 });
@@ -33,12 +39,16 @@ type Settings = z.output<typeof settingsSchema>;
 
 const CELL_RAD = (2 * Math.PI) / 180;
 const BINS = 180;
+const ANY = new Float64Array(BINS).fill(1 / BINS);
+
+/** Degrees of freedom of Student's t: heavy tails, variance still finite (common practice, no source). */
+const FREEDOM = 4;
 
 /** Probability, per step, that the phone is turned in the hand or bag with its lie unchanged. */
 const TURNED_SHARE = 3e-4;
 
 /** Probability that a start heading, or the straight course while the phone is moved, is not as said. */
-const WRONG_SHARE = 0.05;
+const WRONG_SHARE = 0.02;
 const TURNED_WALKER_SHARE = 0.2;
 
 /**
@@ -54,9 +64,9 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
   source:
     'principal axis of horizontal acceleration, sense by gait phase: Kunze, Lukowicz, Partridge & Begole (2009), ' +
     'ISWC, 103-106; smoothing of beliefs: Rabiner (1989), Proceedings of the IEEE 77(2), 257-286',
-  version: 1,
+  version: 2,
   settings: settingsSchema,
-  uses: ['start', 'carry'],
+  uses: ['start', 'carry', 'floor'],
   run({ steps, motion, attitude }, settings, context) {
     const n = steps.t_s.length;
     const { east, north } = deviceDirection(attitude);
@@ -64,6 +74,7 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
     const whole = meanOverIntervals(attitude.t_s, east, north, steps.start_s, steps.end_s);
     const direction = swayRemoved(whole, steps, spells);
     const priors = spells.map(({ up }, i) => carryPrior(i === 0 ? context.carry : null, up));
+    const yawSd = spells.map((spell) => meanYawSd(attitude, steps, spell));
     const logLikelihood = new Float64Array(n * BINS);
     const axisWeight = new Float64Array(spells.length);
     if (settings.motion) {
@@ -72,7 +83,7 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
       const along = meanOverIntervals(attitude.t_s, east, north, strideFrom, strideTo);
       const strides = strideMotion(motion, attitude, steps, along);
       for (const [i, { from, to }] of spells.entries()) {
-        const seen = motionEvidence(strides, from, to, priors[i]!.axisSdRad);
+        const seen = motionEvidence(strides, from, to, Math.hypot(priors[i]!.axisSdRad, yawSd[i]!));
         for (let k = from; k < to; k++) {
           // Told along the stride's mean direction; the table's is the step's.
           const shift = wrapToPi(along[k]! - direction[k]!);
@@ -81,17 +92,29 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
         }
       }
     }
+    if (settings.dominant_directions === 'floor' && context.floor) {
+      const likelihood = alongWalls(context.floor.wall_share);
+      const weights = legWeights(direction);
+      for (let k = 0; k < n; k++)
+        for (let b = 0; b < BINS; b++)
+          logLikelihood[k * BINS + b]! += weights[k]! * Math.log(likelihood(direction[k]! + b * CELL_RAD));
+    }
     const start = startOffset(direction, steps, context.start, settings.start_steps);
     if (start) {
       const row = logLikelihood.subarray((start.to - 1) * BINS, start.to * BINS);
       addAngle(row, start.offsetRad, radians(settings.start_sd_deg), WRONG_SHARE);
     }
-    const fresh = priors.map(distribution);
+    for (const [i, { from, to }] of spells.entries()) {
+      // One thing known of the whole spell: each step brings its share of it.
+      const known = distribution(priors[i]!, yawSd[i]!).map((p) => Math.log(p) / (to - from));
+      for (let k = from; k < to; k++)
+        for (let b = 0; b < BINS; b++) logLikelihood[k * BINS + b]! += known[b]!;
+    }
     const smoothed = smoothOnCircle({
       bins: BINS,
       logLikelihood,
-      prior: fresh[0] ?? new Float64Array(BINS).fill(1 / BINS),
-      moves: movesOf(spells, direction, fresh, settings),
+      prior: ANY,
+      moves: movesOf(spells, direction, settings),
     });
     const step2 = radians(settings.step_sd_deg) ** 2;
     const heading_rad = new Float64Array(n);
@@ -100,8 +123,7 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
     for (const [i, { from, to }] of spells.entries())
       for (let k = from; k < to; k++) {
         heading_rad[k] = wrapToTurn(direction[k]! + smoothed.mean[k]!);
-        const yaw = start ? 0 : yawSdAt(attitude, steps.t_s[k]!);
-        sd_rad[k] = Math.sqrt(yaw * yaw + step2 + smoothed.sd[k]! ** 2);
+        sd_rad[k] = Math.sqrt(step2 + smoothed.sd[k]! ** 2);
         source.push(axisWeight[i]! * priors[i]!.sdRad ** 2 > 1 ? 'motion' : 'device-axis');
       }
     const offset_rad = heading_rad.map((heading, k) => wrapToPi(heading - whole[k]!));
@@ -150,27 +172,32 @@ function addAngle(row: Float64Array, angle: number, sd: number, wrongShare: numb
   }
 }
 
-function distribution(prior: CarryPrior): Float64Array {
+/**
+ * The carry's prior with the error of the yaw in it, in the tails of Student's t: buildings turn a compass by tens of
+ * degrees.
+ */
+function distribution(prior: CarryPrior, yawSd: number): Float64Array {
   const out = new Float64Array(BINS).fill(prior.openShare / BINS);
+  const scale2 = prior.sdRad ** 2 + yawSd ** 2;
   for (const near of prior.near) {
-    const peak = new Float64Array(BINS);
-    addAngle(peak, near, prior.sdRad, 0);
-    for (let b = 0; b < BINS; b++)
-      out[b]! += ((1 - prior.openShare) / prior.near.length) * Math.exp(peak[b]!);
+    const peak = out.map(
+      (_, b) => (1 + wrapToPi(b * CELL_RAD - near) ** 2 / (FREEDOM * scale2)) ** (-(FREEDOM + 1) / 2),
+    );
+    const sum = peak.reduce((total, value) => total + value, 0);
+    for (let b = 0; b < BINS; b++) out[b]! += ((1 - prior.openShare) / prior.near.length) * (peak[b]! / sum);
   }
-  let sum = 0;
-  for (const value of out) sum += value;
-  return out.map((value) => value / sum);
+  return out;
 }
 
-function movesOf(
-  spells: readonly CarrySpell[],
-  direction: Float64Array,
-  fresh: readonly Float64Array[],
-  settings: Settings,
-): CircleMove[] {
+function meanYawSd(attitude: HeadingsInputs['attitude'], steps: Steps, { from, to }: CarrySpell): number {
+  let sum = 0;
+  for (let k = from; k < to; k++) sum += yawSdAt(attitude, steps.t_s[k]!) ** 2;
+  return Math.sqrt(sum / (to - from));
+}
+
+function movesOf(spells: readonly CarrySpell[], direction: Float64Array, settings: Settings): CircleMove[] {
   const moves: CircleMove[] = [];
-  for (const [i, { from, to }] of spells.entries())
+  for (const { from, to } of spells)
     for (let k = from; k < to; k++) {
       if (k === 0) continue;
       const changed = k === from;
@@ -178,7 +205,7 @@ function movesOf(
         shiftRad: changed ? wrapToPi(direction[k - 1]! - direction[k]!) : 0,
         sdRad: radians(changed ? settings.handling_turn_deg : settings.offset_walk_deg),
         freshShare: changed ? TURNED_WALKER_SHARE : TURNED_SHARE,
-        fresh: fresh[i]!,
+        fresh: ANY,
       });
     }
   return moves;
