@@ -25,8 +25,8 @@ export interface StepAgreement {
  * Detected against labelled steps of one walk.
  *
  * A detector's event and a foot contact are different instants of the same step, so a constant lag (at
- * most half a second either way) is taken off first: the median difference of the pairs at the lag that
- * pairs most. Judged is the labelled span and a quarter of a second beyond its ends: outside it nobody
+ * most half a second either way) is taken off first: the median difference of the pairs at the smallest lag that
+ * pairs as many as any, or nearly. Judged is the labelled span and a quarter of a second beyond its ends: outside it nobody
  * looked.
  *
  * @param detected - shape (n), ascending, seconds.
@@ -54,23 +54,24 @@ export function stepAgreement(detected: Float64Array, labelled: Float64Array): S
   };
 }
 
-/** Median of detected minus labelled over the pairs at the best of the lags tried; 0 where nothing pairs. */
+/** Lags that pair this share of the most are as good: a whole step's shift may pair one step more at an end. */
+const AS_GOOD = 0.98;
+
+/** Median of detected minus labelled over the pairs at the smallest of the good lags; 0 where nothing pairs. */
 function lagOf(detected: Float64Array, labelled: Float64Array): number {
-  let best = 0;
-  let most = -1;
   const half = Math.round(LAG_RANGE_S / LAG_STEP_S);
-  // From 0 outwards, so that of lags that pair equally many the smallest is taken.
-  for (let k = 0; k <= 2 * half; k++) {
-    const lag = LAG_STEP_S * (k % 2 ? (k + 1) / 2 : -k / 2);
-    const paired = countPairs(detected, labelled, lag);
-    if (paired > most) {
-      most = paired;
-      best = lag;
-    }
+  // From 0 outwards.
+  const lags = Array.from({ length: 2 * half + 1 }, (_, k) => LAG_STEP_S * (k % 2 ? (k + 1) / 2 : -k / 2));
+  const paired = lags.map((lag) => countPairs(detected, labelled, lag));
+  const most = Math.max(...paired);
+  if (most === 0) return 0;
+  let lag = lags[paired.findIndex((pairs) => pairs >= AS_GOOD * most)]!;
+  // The good lags reach to either side of the best one: the median of the differences goes to their middle.
+  for (let round = 0; round < 3; round++) {
+    const moved = detected.map((t) => t - lag);
+    lag += median(differences(moved, labelled, matchInstants(moved, labelled, STEP_TOLERANCE_S)));
   }
-  const moved = detected.map((t) => t - best);
-  const pairs = matchInstants(moved, labelled, STEP_TOLERANCE_S);
-  return pairs.detected.length === 0 ? 0 : best + median(differences(moved, labelled, pairs));
+  return lag;
 }
 
 function differences(

@@ -1,5 +1,7 @@
-import { join } from 'node:path';
+import { existsSync, readdirSync } from 'node:fs';
+import { join, parse } from 'node:path';
 import { writeCampaignYaml, writeCsv } from '../campaign/write-campaign.js';
+import { InputError } from '../errors.js';
 import { writeText } from '../tables/write.js';
 import { castOf, simulateWalks } from './cast.js';
 import { passRows, type Row, walkColumns, walkRow, writeSurvey, writeWalkers } from './folder-tables.js';
@@ -28,10 +30,15 @@ export interface SimulationSummary {
  * phone's own clock, its drift included.
  *
  * @param dir - the campaign folder; files of the same names are replaced.
- * @throws InputError where the plan's routes or walks do not go together.
+ * @throws InputError where the plan's routes or walks do not go together; `other-walks` where the folder holds truth
+ *   of walks that the plan does not have: it would be taken for this campaign's.
  */
 export async function simulateCampaign(plan: SimulationPlan, dir: string): Promise<SimulationSummary> {
   const cast = castOf(plan);
+  refuseOtherWalks(
+    dir,
+    cast.walks.map(({ walk }) => walk),
+  );
   const summary = {
     dir,
     walkers: cast.walkers.size,
@@ -72,4 +79,17 @@ export async function simulateCampaign(plan: SimulationPlan, dir: string): Promi
     layouts: Object.fromEntries([...cast.devices].map(([name, device]) => [name, layoutOf(device)])),
   } as Parameters<typeof writeCampaignYaml>[1]);
   return { ...summary, checkpoints };
+}
+
+/** Truth files of other walks would make the campaign unreadable, and they are not ours to remove. */
+function refuseOtherWalks(dir: string, walks: readonly string[]): void {
+  for (const folder of ['attitude-truth', 'path-truth']) {
+    const files = existsSync(join(dir, folder)) ? readdirSync(join(dir, folder)) : [];
+    const other = files.find((file) => !file.startsWith('.') && !walks.includes(parse(file).name));
+    if (other !== undefined)
+      throw new InputError(
+        'other-walks',
+        `${join(dir, folder, other)}: is of a walk that this plan does not have; name a new folder`,
+      );
+  }
 }

@@ -1,6 +1,7 @@
 import { type Attitude, type Motion, type Steps, stepsTable } from '../../tables/schemas.js';
 import { defineStage } from '../stage.js';
 import { adaptivePeakValley } from './methods/adaptive-peak-valley.js';
+import { peakChain } from './methods/peak-chain.js';
 
 export interface StepsInputs {
   motion: Motion;
@@ -13,6 +14,6 @@ export const stepsStage = defineStage<StepsInputs, Steps>({
   table: stepsTable,
   reads: ['motion'],
   readsIfPresent: ['attitude'],
-  methods: [adaptivePeakValley],
-  defaultMethod: adaptivePeakValley.name,
+  methods: [peakChain, adaptivePeakValley],
+  defaultMethod: peakChain.name,
 });
