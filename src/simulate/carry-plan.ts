@@ -24,12 +24,13 @@ export const HANDLING_S = 1.6;
 /** Knots of the wander, s. */
 const WANDER_S = 2.5;
 
-/** Draws how the phone sits in each of a walk's carries. */
+/** Draws how the phone sits in each of a walk's carries; `wanderShare` times each carry's own slow wander. */
 export function drawSpells(
   seed: number,
   walk: string,
   spells: readonly CarrySpell[],
   durationS: number,
+  wanderShare: number,
 ): Spell[] {
   return spells.map((spell, index) => {
     const random = randomStream(seed, 'walk', walk, 'carry', index);
@@ -39,7 +40,7 @@ export function drawSpells(
     const wander = () =>
       new QuinticSpline(
         Float64Array.from({ length: n }, (_, i) => (i * durationS) / (n - 1)),
-        Float64Array.from({ length: n }, () => carry.wanderRad * random.normal()),
+        Float64Array.from({ length: n }, () => wanderShare * carry.wanderRad * random.normal()),
       );
     return { ...spell, mounting, wander: [wander(), wander(), wander()] };
   });

@@ -44,10 +44,12 @@ export function motionModel(
     timeline: Timeline;
     upM: number;
     carries: readonly CarrySpell[];
+    /** The phone's slow wander, times that of each carry. */
+    wander: number;
   },
 ): MotionModel {
-  const { walker, curve, timeline, upM, carries } = parts;
-  const spells = drawSpells(seed, walk, carries, timeline.durationS);
+  const { walker, curve, timeline, upM, carries, wander } = parts;
+  const spells = drawSpells(seed, walk, carries, timeline.durationS, wander);
   return { walker, curve, timeline, pelvisUpM: upM + 1.05 * walker.legM, spells };
 }
 

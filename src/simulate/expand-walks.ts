@@ -11,6 +11,7 @@ export interface WalkPlan {
   device: string;
   carry: CarryName;
   changes: WalksPlan['changes'];
+  wander: number;
   reverse: boolean;
 }
 
@@ -30,7 +31,15 @@ export function expandWalks(plan: SimulationPlan): WalkPlan[] {
         for (const carry of [entry.carry].flat())
           for (const device of devices)
             for (let i = 0; i < entry.repeat; i++)
-              own.push({ walker, route, device, carry, changes: entry.changes, reverse: entry.reverse });
+              own.push({
+                walker,
+                route,
+                device,
+                carry,
+                changes: entry.changes,
+                wander: entry.wander,
+                reverse: entry.reverse,
+              });
     for (const [i, each] of own.entries()) {
       const number = (n: number) => String(n).padStart(2, '0');
       const walk =

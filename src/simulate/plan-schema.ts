@@ -110,6 +110,11 @@ const walksSchema = z.strictObject({
     .array(z.strictObject({ at_m: positive, carry }))
     .default([])
     .describe('Changes of carry in mid-walk.'),
+  wander: z
+    .number()
+    .min(0)
+    .default(1)
+    .describe("Slow wander of the phone's angles, times that of the carry; 0 holds it still."),
   reverse: z.boolean().default(false),
   repeat: z.int().min(1).default(1),
 });

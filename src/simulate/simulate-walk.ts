@@ -69,6 +69,7 @@ export function simulateWalk(
     timeline,
     upM: route.plan.up_m,
     carries,
+    wander: plan.wander,
   });
   const rates = ratesOf(device);
   const together = device.plan.shape === 'wide';

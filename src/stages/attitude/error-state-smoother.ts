@@ -56,7 +56,10 @@ const GAP_VELOCITY_WALK = 5;
 
 /** First guess of the magnetic heading's scatter, rad, before it is estimated, and its floor. */
 const FIRST_MAGNETIC_SD = 0.5;
-const LEAST_MAGNETIC_SD = 0.02;
+const LEAST_MAGNETIC_SD = 0.01;
+
+/** What is fitted to the magnetic headings of a walk: yaw, bias and a scale, in effect. */
+const FITTED = 3;
 
 /** Seconds on either side that make the slow course of magnetic heading when its branch is chosen. */
 const BRANCH_WINDOW_S = 5;
@@ -317,10 +320,15 @@ class MagneticWeights {
         const r2 = heading.angle[j]! ** 2 / (this.scatter2 * heading.deviation[j]!);
         tails[j] = (DEGREES_OF_FREEDOM + 1) / (DEGREES_OF_FREEDOM + r2);
         const weight = tails[j]! / heading.deviation[j]!;
-        sum += weight * (heading.angle[j]! ** 2 + before.variance[j * SIZE + ATTITUDE + 2]!);
+        sum += weight * heading.angle[j]! ** 2;
         used++;
       }
-      if (used > 0) this.scatter2 = Math.max(LEAST_MAGNETIC_SD ** 2, sum / used);
+      const stretches = used / this.repeat;
+      if (used > 0)
+        this.scatter2 = Math.max(
+          LEAST_MAGNETIC_SD ** 2,
+          ((sum / used) * stretches) / Math.max(1, stretches - FITTED),
+        );
     }
     for (let j = 0; j < intervals; j++) {
       if (fieldCount[j] === 0) continue;

@@ -2,7 +2,7 @@ import type { PeakCandidates } from './peak-candidates.js';
 
 /** Against the bout's nearest interval: how much sooner or later the first and the last step may come. */
 const SOONEST = 0.7;
-const LATEST = 1.35;
+const LATEST = 1.6;
 
 /**
  * Adds the step before the first and the one after the last of each bout, where there is a peak at its time.

@@ -25,8 +25,8 @@ export const smootherSettings = z.strictObject({
   accel_bias_sd_mps2: z.number().positive().default(0.05),
   /** Velocity random walk of the accelerometer, m/s per sqrt(s). */
   velocity_random_walk_mps: z.number().positive().default(0.02),
-  /** How long the velocity keeps its sign: half a second, a step. */
-  velocity_memory_s: z.number().positive().default(0.5),
+  /** How long the velocity keeps its direction: a walker on one leg of a route some ten seconds, a waving hand less. */
+  velocity_memory_s: z.number().positive().default(10),
   /** Least standard deviation of the velocity; the walk's own is estimated above it. */
   velocity_sd_mps: z.number().positive().default(0.3),
   /** Whether the magnetometer is used where there is one. */
@@ -61,7 +61,7 @@ export const fixedIntervalSmoother = defineMethod<{ motion: Motion }, Attitude, 
   source:
     'error-state model: Lefferts, Markley & Shuster (1982), J. Guidance 5(5), 417-429; smoother: Bierman (1973), ' +
     'Int. J. Control 18(1), 65-75; Student-t weights: Lange, Little & Taylor (1989), JASA 84, 881-896',
-  version: 2,
+  version: 3,
   settings: smootherSettings,
   uses: ['place'],
   run({ motion }, settings, context) {
