@@ -42,7 +42,7 @@ export async function runWalks(
     filename: new URL(isSource ? './worker.ts' : './worker.js', import.meta.url).href,
     minThreads: threads,
     maxThreads: threads,
-    ...(isSource ? { execArgv: ['--import', 'tsx'] } : {}),
+    ...(isSource ? { execArgv: ['--import', import.meta.resolve('tsx')] } : {}),
   });
   try {
     await Promise.all(

@@ -6,6 +6,7 @@ import { bestChain } from '../best-chain.js';
 import { withBoutEdges } from '../bout-edges.js';
 import { gaitSignal } from '../gait-signal.js';
 import type { StepsInputs } from '../index.js';
+import { otherLegSteps } from '../other-leg.js';
 import { peakCandidates } from '../peak-candidates.js';
 import { LONGEST_STEP_S, stepColumns } from '../step-columns.js';
 import { stepLinks } from '../step-links.js';
@@ -41,6 +42,7 @@ const settingsSchema = z.strictObject({
  * beat with the one before that and the likeness to the last step of the same foot each count for or against; a chain of
  * peaks whose evidence outweighs that of no walking at all is a bout. The whole log is weighed at once, so a bout's first
  * steps are known by those that follow, and irregular motion (handling, turning on the spot, taps) makes no bout.
+ * Where the gyroscope shows that only one leg was heard, the other's steps are put half way between.
  */
 export const peakChain = defineMethod<StepsInputs, Steps, typeof settingsSchema>({
   name: 'peak-chain',
@@ -62,10 +64,20 @@ export const peakChain = defineMethod<StepsInputs, Steps, typeof settingsSchema>
       settings.edge_prominence_mps2,
     );
     const probability = stepProbability(links, settings.restart_cost, settings.evidence_share);
-    const peakS = Float64Array.from(steps, (i) => signal.startS + candidates.at[i]! / signal.rateHz);
+    const heardS = Float64Array.from(steps, (i) => signal.startS + candidates.at[i]! / signal.rateHz);
+    const events = [...heardS].map((timeS, k) => ({ timeS, confidence: probability[steps[k]!]! }));
+    for (const timeS of otherLegSteps(motion, heardS)) {
+      const k = heardS.findLastIndex((t) => t < timeS);
+      // No surer than the steps on either side.
+      events.push({ timeS, confidence: Math.min(events[k]!.confidence, events[k + 1]!.confidence) });
+    }
+    events.sort((a, b) => a.timeS - b.timeS);
     return stepColumns(signal, {
-      timeS: contacts(peakS, settings.contact_lead_pct / 100),
-      confidence: Float64Array.from(steps, (i) => probability[i]!),
+      timeS: contacts(
+        Float64Array.from(events, ({ timeS }) => timeS),
+        settings.contact_lead_pct / 100,
+      ),
+      confidence: Float64Array.from(events, ({ confidence }) => confidence),
     });
   },
 });
