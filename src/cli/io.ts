@@ -19,7 +19,7 @@ export function processIo(): Io {
     out: (text) => void stdout.write(text),
     err: (text) => void stderr.write(text),
     isTerminal: stderr.isTTY === true,
-    width: stderr.columns ?? 80,
+    width: stderr.columns || 80,
     hasColour: stderr.isTTY === true && !env.NO_COLOR,
   };
 }

@@ -5,6 +5,7 @@ import yargs, { type CommandModule } from 'yargs';
 import { didYouMean } from '../campaign/nearest-name.js';
 import { InputError } from '../errors.js';
 import { VERSION } from '../version.js';
+import { checkCommand } from './check.js';
 import { type Command, commandModule, type ExitCode, type SharedOptions } from './command.js';
 import { demoCommand } from './demo.js';
 import type { Io } from './io.js';
@@ -17,6 +18,7 @@ import { simulateCommand } from './simulate.js';
 // biome-ignore lint/suspicious/noExplicitAny: each command has options of its own
 const COMMANDS: readonly Command<any>[] = [
   demoCommand,
+  checkCommand,
   runCommand,
   scoreCommand,
   showCommand,
