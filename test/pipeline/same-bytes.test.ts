@@ -92,7 +92,9 @@ test('a changed log, survey point or walker changes what follows from it', async
   const edit = (name: string, change: (text: string) => string) =>
     writeFileSync(join(dir, name), change(readFileSync(join(dir, name), 'utf8')));
   edit('survey.csv', (text) => text.replace(/^C,([^,]*),/m, 'C,20,'));
-  expect(made(await runCampaign(dir, { jobs: 1 }))).toEqual(Array.from({ length: 3 }, () => ['checkpoints']));
+  expect(made(await runCampaign(dir, { jobs: 1 }))).toEqual(
+    Array.from({ length: 3 }, () => ['findings', 'checkpoints']),
+  );
   edit('walkers.csv', (text) => text.replace(/^lou,old,[^,]*/m, 'lou,old,1.20'));
   expect(made(await runCampaign(dir, { jobs: 1 }))).toEqual([[], ['strides', 'path', 'checkpoints'], []]);
   edit(join('logs', 'w03.csv'), (text) => text.slice(0, text.lastIndexOf('\n', text.length - 2) + 1));
