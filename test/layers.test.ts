@@ -15,6 +15,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   tables: ['errors.ts', 'version.ts'],
   campaign: ['errors.ts', 'tables', 'geometry', 'signal', 'stats', 'stages'],
   stages: ['errors.ts', 'signal', 'geometry', 'stats', 'tables', 'campaign'],
+  calibration: ['errors.ts', 'signal', 'stats'],
   scores: ['errors.ts', 'signal', 'geometry', 'stats', 'tables', 'campaign', 'stages'],
   simulate: ['errors.ts', 'geometry', 'signal', 'stats', 'tables', 'campaign'],
 };

@@ -5,6 +5,7 @@ import yargs, { type CommandModule } from 'yargs';
 import { didYouMean } from '../campaign/nearest-name.js';
 import { InputError } from '../errors.js';
 import { VERSION } from '../version.js';
+import { calibrateCommand } from './calibrate.js';
 import { checkCommand } from './check.js';
 import { type Command, commandModule, type ExitCode, type SharedOptions } from './command.js';
 import { demoCommand } from './demo.js';
@@ -22,6 +23,7 @@ const COMMANDS: readonly Command<any>[] = [
   runCommand,
   scoreCommand,
   showCommand,
+  calibrateCommand,
   simulateCommand,
 ];
 

@@ -1,7 +1,7 @@
+import { stillWindows } from '../../signal/still-windows.js';
 import { median } from '../../stats/quantile.js';
 import type { ReadingsAccel, ReadingsGyro } from '../../tables/schemas.js';
 import type { Finding } from './finding.js';
-import { stillWindows } from './still-windows.js';
 
 export interface RestLimits {
   /** Largest part by which |f| at rest may differ from gravity, percent. */

@@ -1,0 +1,159 @@
+import { fitNorm, type NormFit, type NormShape } from '../calibration/fit-norm.js';
+import { stillPoses } from '../calibration/still-poses.js';
+import type { AxisCalibration } from '../campaign/context.js';
+import { placeOf } from '../campaign/place.js';
+import { readCampaign } from '../campaign/read-campaign.js';
+import { readLog } from '../campaign/read-log.js';
+import type { LogReadings } from '../campaign/readings.js';
+import { writeCalibrationPart } from '../campaign/write-calibration.js';
+import { InputError } from '../errors.js';
+import { chosenWalks } from '../pipeline.js';
+import { stillWindows } from '../signal/still-windows.js';
+import { median } from '../stats/quantile.js';
+import { layoutOf } from './import-readings.js';
+
+export type CalibratedSensor = 'gyro' | 'accel' | 'mag';
+
+export interface DeviceFit {
+  device: string;
+  sensor: CalibratedSensor;
+  calibration: AxisCalibration;
+  biasSd: readonly number[];
+  /** Accelerometer and magnetometer only. */
+  fit: NormFit | null;
+  /** Still seconds, poses, or readings that it rests on. */
+  basis: string;
+  path: string;
+}
+
+export interface CalibrateOptions {
+  /** Walks whose logs are used; they must be of one device. */
+  walks: readonly string[];
+  /** What of accelerometer or magnetometer is fitted; default all that the data determine: `full`. */
+  shape?: NormShape | undefined;
+  /** Device name where walks.csv gives none. */
+  device?: string | undefined;
+}
+
+/** Scatter within a second up to which a device lies still: on a table with a noisy part. */
+const STILL_MPS2 = 0.3;
+const STILL_RADPS = 0.03;
+const IDENTITY: AxisCalibration['matrix'] = [1, 0, 0, 0, 1, 0, 0, 0, 1];
+
+/**
+ * Calibrates one sensor of a device from still or rotation logs, and writes `calibrations/device-<device>.yaml`, which
+ * `motion` uses from then on.
+ *
+ * gyro: mean rate over still seconds. accel: |f| in still poses is gravity. mag: |m| is the field of the model at the
+ * place and date, or, where the place is not known, the median size.
+ *
+ * @throws InputError where the logs are of several devices, lack the sensor, or cannot determine the parameters.
+ */
+export async function calibrateDevice(
+  campaignDir: string,
+  sensor: CalibratedSensor,
+  options: CalibrateOptions,
+): Promise<DeviceFit> {
+  const campaign = readCampaign(campaignDir);
+  const walks = campaign.walks.filter(({ walk }) => chosenWalks(campaign, options.walks).includes(walk));
+  const devices = [...new Set(walks.map(({ device }) => device ?? options.device ?? null))];
+  const device = options.device ?? devices[0];
+  if (devices.length > 1 || device === null || device === undefined)
+    throw new InputError(
+      'no-device',
+      devices.length > 1
+        ? `calibrate ${sensor}: the walks are of several devices (${devices.join(', ')}); name the walks of one with --walk`
+        : `calibrate ${sensor}: walks.csv names no device for these walks; fill its column device, or give --device`,
+    );
+  const logs: LogReadings[] = [];
+  for (const walk of walks) logs.push(await readLog(campaign.dir, walk, layoutOf(campaign, walk)));
+  const place = placeOf(campaign.grid);
+  const found =
+    sensor === 'gyro'
+      ? gyroAtRest(logs)
+      : sensor === 'accel'
+        ? accelFromPoses(logs, place.gravity_mps2, options.shape ?? 'full')
+        : magFromRotation(logs, place.field_uT, options.shape ?? 'full');
+  const { fit, biasSd, basis, calibration } = found;
+  const about = {
+    from: walks.map(({ walk }) => walk),
+    basis,
+    bias_sd: biasSd,
+    ...(fit
+      ? {
+          matrix_sd: fit.matrixSd,
+          residual: fit.residual,
+          residual_before: fit.residualBefore,
+          condition: fit.condition,
+        }
+      : {}),
+  };
+  const path = writeCalibrationPart(campaign.dir, 'device', device, sensor, calibration, about);
+  return { device, sensor, path, ...found };
+}
+
+type Found = Pick<DeviceFit, 'calibration' | 'biasSd' | 'fit' | 'basis'>;
+
+function gyroAtRest(logs: readonly LogReadings[]): Found {
+  const windows = logs.flatMap(({ gyro }) =>
+    gyro ? stillWindows(gyro.t_s, [gyro.x_radps, gyro.y_radps, gyro.z_radps], STILL_RADPS) : [],
+  );
+  if (windows.length < 5)
+    throw new InputError(
+      'too-few',
+      `calibrate gyro: needs at least 5 still seconds, found ${windows.length}; lay the device down for half a minute and record`,
+    );
+  // A slow even turn looks still as well; most seconds of a still log are not of one.
+  const usual = [0, 1, 2].map((a) => median(Float64Array.from(windows, ({ mean }) => mean[a]!)));
+  const away = windows.map(({ mean }) => Math.hypot(...mean.map((x, a) => x - usual[a]!)));
+  const limit = 4 * 1.4826 * median(Float64Array.from(away)) + 1e-9;
+  const still = windows.filter((_, i) => away[i]! <= limit);
+  const n = still.length;
+  const mean = [0, 1, 2].map((a) => still.reduce((sum, w) => sum + w.mean[a]!, 0) / n);
+  const biasSd = [0, 1, 2].map((a) =>
+    Math.sqrt(still.reduce((sum, w) => sum + (w.mean[a]! - mean[a]!) ** 2, 0) / (n - 1) / n),
+  );
+  return {
+    calibration: { bias: [mean[0]!, mean[1]!, mean[2]!], matrix: IDENTITY },
+    biasSd,
+    fit: null,
+    basis: `${n} still seconds`,
+  };
+}
+
+function accelFromPoses(logs: readonly LogReadings[], gravity: number, shape: NormShape): Found {
+  const poses = logs.flatMap(({ accel }) =>
+    accel ? stillPoses(accel.t_s, [accel.x_mps2, accel.y_mps2, accel.z_mps2], STILL_MPS2) : [],
+  );
+  const fit = fitNorm(axesOf(poses.map(({ mean }) => mean)), gravity, shape);
+  return { ...ofFit(fit), basis: `${poses.length} still poses` };
+}
+
+function magFromRotation(logs: readonly LogReadings[], field: number | null, shape: NormShape): Found {
+  const readings = logs.flatMap(({ mag }) =>
+    mag ? Array.from(mag.t_s, (_, i) => [mag.x_uT[i]!, mag.y_uT[i]!, mag.z_uT[i]!] as const) : [],
+  );
+  if (readings.length < 30)
+    throw new InputError(
+      'too-few',
+      `calibrate mag: the logs have ${readings.length} magnetometer readings; record a minute while turning the device about every axis`,
+    );
+  const axes = axesOf(readings);
+  const sizes = axes[0].map((x, i) => Math.hypot(x, axes[1][i]!, axes[2][i]!)).sort();
+  const fit = fitNorm(axes, field ?? sizes[sizes.length >> 1]!, shape, true);
+  return {
+    ...ofFit(fit),
+    basis: `${readings.length} readings, field ${field === null ? 'by their median size' : `${field.toFixed(2)} uT by the model`}`,
+  };
+}
+
+function ofFit(fit: NormFit): Omit<Found, 'basis'> {
+  return { calibration: { bias: fit.bias, matrix: fit.matrix }, biasSd: fit.biasSd, fit };
+}
+
+function axesOf(
+  rows: readonly (readonly [number, number, number])[],
+): [Float64Array, Float64Array, Float64Array] {
+  const axis = (a: 0 | 1 | 2) => Float64Array.from(rows, (row) => row[a]);
+  return [axis(0), axis(1), axis(2)];
+}
