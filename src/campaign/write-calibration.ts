@@ -23,7 +23,8 @@ export function writeCalibrationPart(
   about: unknown,
 ): string {
   const path = join(campaignDir, 'calibrations', `${kind}-${name}.yaml`);
-  if (existsSync(path)) kind === 'device' ? readDeviceCalibration(path) : readStepConstants(path);
+  const read = kind === 'device' ? readDeviceCalibration : readStepConstants;
+  if (existsSync(path)) read(path);
   const document = parseDocument(existsSync(path) ? readFileSync(path, 'utf8') : '{}');
   document.setIn([part], document.createNode(value));
   document.setIn(['found', part], document.createNode(about));
