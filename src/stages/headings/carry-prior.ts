@@ -8,6 +8,8 @@ export interface CarryPrior {
   openShare: number;
   /** How far the axis of motion may lie off the walking direction for the whole spell, rad. */
   axisSdRad: number;
+  /** Random walk of the offset, rad per square root of a step: hands drift, pockets slip, belts do neither. */
+  walkRad: number;
 }
 
 const RAD = Math.PI / 180;
@@ -21,14 +23,14 @@ const RAD = Math.PI / 180;
  * hand in front moves along its forearm, 15 degrees off in 48 recorded walks.
  */
 const BY_CARRY: Readonly<Record<string, CarryPrior>> = {
-  hand: { near: [0], sdRad: 5 * RAD, openShare: 0.02, axisSdRad: 15 * RAD },
-  swing: { near: [0], sdRad: 20 * RAD, openShare: 0.2, axisSdRad: 5 * RAD },
-  chest: { near: [0, Math.PI], sdRad: 7 * RAD, openShare: 0.05, axisSdRad: 5 * RAD },
-  waist: { near: [0, Math.PI], sdRad: 10 * RAD, openShare: 0.05, axisSdRad: 5 * RAD },
+  hand: { near: [0], sdRad: 5 * RAD, openShare: 0.02, axisSdRad: 15 * RAD, walkRad: 0.4 * RAD },
+  swing: { near: [0], sdRad: 20 * RAD, openShare: 0.2, axisSdRad: 5 * RAD, walkRad: 0.15 * RAD },
+  chest: { near: [0, Math.PI], sdRad: 7 * RAD, openShare: 0.05, axisSdRad: 5 * RAD, walkRad: 0.1 * RAD },
+  waist: { near: [0, Math.PI], sdRad: 10 * RAD, openShare: 0.05, axisSdRad: 5 * RAD, walkRad: 0.06 * RAD },
 };
 
 /** Any direction. */
-const OPEN: CarryPrior = { near: [], sdRad: Math.PI, openShare: 1, axisSdRad: 5 * RAD };
+const OPEN: CarryPrior = { near: [], sdRad: Math.PI, openShare: 1, axisSdRad: 5 * RAD, walkRad: 0.12 * RAD };
 
 /** Flat enough to be read: screen up, level across. The face's tilt alone tells a phone in use from one put away. */
 const HELD_TOP_UP: readonly [number, number] = [Math.sin(-15 * RAD), Math.sin(65 * RAD)];

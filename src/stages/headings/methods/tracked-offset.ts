@@ -5,10 +5,10 @@ import type { Headings, Steps } from '../../../tables/schemas.js';
 import { defineMethod } from '../../stage.js';
 import { type CarryPrior, carryPrior } from '../carry-prior.js';
 import { type CarrySpell, carrySpells } from '../carry-spells.js';
-import { deviceDirection } from '../device-direction.js';
 import type { HeadingsInputs } from '../index.js';
 import { meanOverIntervals } from '../mean-over-intervals.js';
 import { motionEvidence } from '../motion-evidence.js';
+import { spellDirection } from '../spell-direction.js';
 import { startOffset } from '../start-offset.js';
 import { strideMotion } from '../stride-motion.js';
 import { alongWalls, legWeights } from '../wall-evidence.js';
@@ -18,10 +18,10 @@ import { yawSdAt } from '../yaw-sd-at.js';
 const settingsSchema = z.strictObject({
   /** Whether the phone's motion tells the walking direction, or only the way it is carried and a given start heading. */
   motion: z.boolean().default(true),
-  /** Random walk of the offset within a carry, degrees per square root of a step: hands drift, pockets slip. */
-  offset_walk_deg: z.number().positive().default(0.3),
+  /** Random walk of the offset, as a factor on what is usual for the carry. */
+  offset_walk: z.number().positive().default(1),
   /** Scatter of a single step. */
-  step_sd_deg: z.number().positive().default(1.5),
+  step_sd_deg: z.number().positive().default(1),
   /** First steps after the start whose mean direction is set to the start heading: two strides, so sway averages out. */
   start_steps: z.int().min(1).max(20).default(4),
   /** Standard deviation of a given start heading against those steps. */
@@ -37,8 +37,8 @@ const settingsSchema = z.strictObject({
 
 type Settings = z.output<typeof settingsSchema>;
 
-const CELL_RAD = (2 * Math.PI) / 180;
-const BINS = 180;
+const BINS = 360;
+const CELL_RAD = (2 * Math.PI) / BINS;
 const ANY = new Float64Array(BINS).fill(1 / BINS);
 
 /** Degrees of freedom of Student's t: heavy tails, variance still finite (common practice, no source). */
@@ -64,13 +64,13 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
   source:
     'principal axis of horizontal acceleration, sense by gait phase: Kunze, Lukowicz, Partridge & Begole (2009), ' +
     'ISWC, 103-106; smoothing of beliefs: Rabiner (1989), Proceedings of the IEEE 77(2), 257-286',
-  version: 2,
+  version: 3,
   settings: settingsSchema,
   uses: ['start', 'carry', 'floor'],
   run({ steps, motion, attitude }, settings, context) {
     const n = steps.t_s.length;
-    const { east, north } = deviceDirection(attitude);
     const spells = carrySpells(attitude, steps);
+    const { east, north } = spellDirection(attitude, steps, spells);
     const whole = meanOverIntervals(attitude.t_s, east, north, steps.start_s, steps.end_s);
     const direction = swayRemoved(whole, steps, spells);
     const priors = spells.map(({ up }, i) => carryPrior(i === 0 ? context.carry : null, up));
@@ -114,7 +114,7 @@ export const trackedOffset = defineMethod<HeadingsInputs, Headings, typeof setti
       bins: BINS,
       logLikelihood,
       prior: ANY,
-      moves: movesOf(spells, direction, settings),
+      moves: movesOf(spells, priors, direction, settings),
     });
     const step2 = radians(settings.step_sd_deg) ** 2;
     const heading_rad = new Float64Array(n);
@@ -195,15 +195,20 @@ function meanYawSd(attitude: HeadingsInputs['attitude'], steps: Steps, { from, t
   return Math.sqrt(sum / (to - from));
 }
 
-function movesOf(spells: readonly CarrySpell[], direction: Float64Array, settings: Settings): CircleMove[] {
+function movesOf(
+  spells: readonly CarrySpell[],
+  priors: readonly CarryPrior[],
+  direction: Float64Array,
+  settings: Settings,
+): CircleMove[] {
   const moves: CircleMove[] = [];
-  for (const { from, to } of spells)
+  for (const [i, { from, to }] of spells.entries())
     for (let k = from; k < to; k++) {
       if (k === 0) continue;
       const changed = k === from;
       moves.push({
         shiftRad: changed ? wrapToPi(direction[k - 1]! - direction[k]!) : 0,
-        sdRad: radians(changed ? settings.handling_turn_deg : settings.offset_walk_deg),
+        sdRad: changed ? radians(settings.handling_turn_deg) : settings.offset_walk * priors[i]!.walkRad,
         freshShare: changed ? TURNED_WALKER_SHARE : TURNED_SHARE,
         fresh: ANY,
       });
