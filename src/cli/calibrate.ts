@@ -4,7 +4,7 @@ import type { Command, ExitCode, SharedOptions } from './command.js';
 import { type Io, paint } from './io.js';
 import { progressLine } from './progress.js';
 
-const SUBJECTS = ['gyro', 'accel', 'mag', 'noise', 'walkers'] as const;
+const SUBJECTS = ['gyro', 'accel', 'mag', 'delay', 'noise', 'walkers'] as const;
 
 interface CalibrateOptions {
   what: (typeof SUBJECTS)[number];
@@ -27,7 +27,7 @@ export const calibrateCommand: Command<CalibrateOptions> = {
         choices: SUBJECTS,
         demandOption: true,
         describe:
-          'gyro: still log; accel: still poses; mag: rotation log; noise: still log; walkers: walks of known length',
+          'gyro: still log; accel: still poses; mag, delay: rotation log or walks; noise: still log; walkers: walks of known length',
       })
       .positional('campaign', { type: 'string', demandOption: true, describe: 'campaign folder' })
       .option('walk', {
@@ -68,6 +68,8 @@ export const calibrateCommand: Command<CalibrateOptions> = {
       case 'accel':
       case 'mag':
         return device(options.what, options, io);
+      case 'delay':
+        return delay(options, io);
       case 'noise':
         return noise(options, io);
       case 'walkers':
@@ -88,6 +90,18 @@ async function device(sensor: CalibratedSensor, given: Given, io: Io): Promise<E
   else {
     const { deviceFitText } = await import('./calibration-text.js');
     io.out(deviceFitText(found));
+    if (!quiet) io.err(`written to ${found.path}; "run" uses it from now on\n`);
+  }
+  return 0;
+}
+
+async function delay({ campaign, walk, device: name, json, quiet }: Given, io: Io): Promise<ExitCode> {
+  const { calibrateDelay } = await import('../pipeline/calibrate-device.js');
+  const found = await calibrateDelay(campaign, { walks: walk, device: name });
+  if (json) io.out(`${JSON.stringify(found, null, 2)}\n`);
+  else {
+    const { delayText } = await import('./calibration-text.js');
+    io.out(delayText(found));
     if (!quiet) io.err(`written to ${found.path}; "run" uses it from now on\n`);
   }
   return 0;

@@ -1,4 +1,4 @@
-import type { DeviceFit } from '../pipeline/calibrate-device.js';
+import type { DelayFit, DeviceFit } from '../pipeline/calibrate-device.js';
 import type { WalkersFit } from '../pipeline/calibrate-walkers.js';
 import type { AxisNoise } from '../pipeline/noise-of-log.js';
 import { fixed, printable, textTable } from './text-table.js';
@@ -31,6 +31,15 @@ export function deviceFitText({ device, sensor, calibration, biasSd, fit, basis 
       `size off by ${fit.residual.toPrecision(3)} ${unit} (root mean square; ${fit.residualBefore.toPrecision(3)} before), at most ${fit.worst.toPrecision(3)}; condition ${fit.condition.toFixed(1)}`,
     );
   return `${lines.join('\n')}\n`;
+}
+
+/** A device's delay for people. */
+export function delayText({ device, delay_s, delaySd, walks }: DelayFit): string {
+  return (
+    `magnetometer of ${printable(device)}: ${(1000 * delay_s).toFixed(1)} ms to add to its times` +
+    `${Number.isFinite(delaySd) ? ` (se ${(1000 * delaySd).toFixed(1)} ms)` : ''}, from ${walks.length} logs, ` +
+    `correlation ${Math.min(...walks.map(({ correlation }) => correlation)).toFixed(2)} and above\n`
+  );
 }
 
 /** Noise of each axis for people: a few averaging times, then what is fitted. */

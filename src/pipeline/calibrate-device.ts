@@ -8,7 +8,9 @@ import type { LogReadings } from '../campaign/readings.js';
 import { writeCalibrationPart } from '../campaign/write-calibration.js';
 import { InputError } from '../errors.js';
 import { chosenWalks } from '../pipeline.js';
+import { interpolateCubic } from '../signal/interpolate-cubic.js';
 import { stillWindows } from '../signal/still-windows.js';
+import { vectorDelay } from '../signal/vector-delay.js';
 import { median } from '../stats/quantile.js';
 import { layoutOf } from './import-readings.js';
 
@@ -54,17 +56,7 @@ export async function calibrateDevice(
   sensor: CalibratedSensor,
   options: CalibrateOptions,
 ): Promise<DeviceFit> {
-  const campaign = readCampaign(campaignDir);
-  const walks = campaign.walks.filter(({ walk }) => chosenWalks(campaign, options.walks).includes(walk));
-  const devices = [...new Set(walks.map(({ device }) => device ?? options.device ?? null))];
-  const device = options.device ?? devices[0];
-  if (devices.length > 1 || device === null || device === undefined)
-    throw new InputError(
-      'no-device',
-      devices.length > 1
-        ? `calibrate ${sensor}: the walks are of several devices (${devices.join(', ')}); name the walks of one with --walk`
-        : `calibrate ${sensor}: walks.csv names no device for these walks; fill its column device, or give --device`,
-    );
+  const { campaign, walks, device } = deviceWalks(campaignDir, sensor, options);
   const logs: LogReadings[] = [];
   for (const walk of walks) logs.push(await readLog(campaign.dir, walk, layoutOf(campaign, walk)));
   const place = placeOf(campaign.grid);
@@ -90,6 +82,22 @@ export async function calibrateDevice(
   };
   const path = writeCalibrationPart(campaign.dir, 'device', device, sensor, calibration, about);
   return { device, sensor, path, ...found };
+}
+
+/** The walks to use and the one device that they are of. */
+function deviceWalks(campaignDir: string, what: string, options: CalibrateOptions) {
+  const campaign = readCampaign(campaignDir);
+  const walks = campaign.walks.filter(({ walk }) => chosenWalks(campaign, options.walks).includes(walk));
+  const devices = [...new Set(walks.map(({ device }) => device ?? options.device ?? null))];
+  const device = options.device ?? devices[0];
+  if (devices.length > 1 || device === null || device === undefined)
+    throw new InputError(
+      'no-device',
+      devices.length > 1
+        ? `calibrate ${what}: the walks are of several devices (${devices.join(', ')}); name the walks of one with --walk`
+        : `calibrate ${what}: walks.csv names no device for these walks; fill its column device, or give --device`,
+    );
+  return { campaign, walks, device };
 }
 
 type Found = Pick<DeviceFit, 'calibration' | 'biasSd' | 'fit' | 'basis'>;
@@ -156,4 +164,61 @@ function axesOf(
 ): [Float64Array, Float64Array, Float64Array] {
   const axis = (a: 0 | 1 | 2) => Float64Array.from(rows, (row) => row[a]);
   return [axis(0), axis(1), axis(2)];
+}
+
+/** Delay of a device's magnetometer against its gyroscope. */
+export interface DelayFit {
+  device: string;
+  /** To be added to the magnetometer's times, s, with the standard error from walk to walk (NaN of one walk). */
+  delay_s: number;
+  delaySd: number;
+  walks: { walk: string; delay_s: number; correlation: number }[];
+  path: string;
+}
+
+/** Below this the two look too little alike to tell a delay. */
+const LEAST_CORRELATION = 0.6;
+const GRID_S = 0.01;
+
+/**
+ * Sensor-to-sensor delay from logs in which the device turns, by cross-correlation; walks count by their correlation.
+ *
+ * @throws InputError where the logs are of several devices, or in none of them field and rotation look alike.
+ */
+export async function calibrateDelay(campaignDir: string, options: CalibrateOptions): Promise<DelayFit> {
+  const { campaign, walks, device } = deviceWalks(campaignDir, 'delay', options);
+  const found: DelayFit['walks'] = [];
+  for (const walk of walks) {
+    const { gyro, mag } = await readLog(campaign.dir, walk, layoutOf(campaign, walk));
+    if (!gyro || !mag) continue;
+    const n = Math.floor(Math.min(gyro.t_s.at(-1)!, mag.t_s.at(-1)!) / GRID_S);
+    const onGrid = (t: Float64Array, columns: Float64Array[]) =>
+      columns.map((column) => interpolateCubic(t, column, 0, GRID_S, n));
+    const delay = vectorDelay(
+      onGrid(gyro.t_s, [gyro.x_radps, gyro.y_radps, gyro.z_radps]),
+      onGrid(mag.t_s, [mag.x_uT, mag.y_uT, mag.z_uT]),
+      GRID_S,
+    );
+    if (delay && delay.correlation > LEAST_CORRELATION)
+      found.push({ walk: walk.walk, delay_s: -delay.delayS, correlation: delay.correlation });
+  }
+  if (found.length === 0)
+    throw new InputError(
+      'undetermined',
+      'calibrate delay: in none of the logs does the magnetic field turn as the gyroscope says; record a minute of quick turns about every axis',
+    );
+  const total = found.reduce((sum, { correlation }) => sum + correlation, 0);
+  const delay_s = found.reduce((sum, each) => sum + each.correlation * each.delay_s, 0) / total;
+  const spread = found.reduce((sum, each) => sum + (each.delay_s - delay_s) ** 2, 0);
+  const n = found.length;
+  const delaySd = n > 1 ? Math.sqrt(spread / (n - 1) / n) : Number.NaN;
+  const path = writeCalibrationPart(
+    campaign.dir,
+    'device',
+    device,
+    'delay_s',
+    { mag: delay_s },
+    { walks: found.map(({ walk }) => walk) },
+  );
+  return { device, delay_s, delaySd, walks: found, path };
 }

@@ -17,6 +17,10 @@ const QUIET_PCT = 4;
 /** What is left of the turn, median: little where sensors belong together, about one where they do not. */
 const AGREES = 0.55;
 const DISAGREES = 0.7;
+/** So little that another unit of the gyroscope is told by it. */
+const CLEARLY_AGREES = 0.4;
+
+const DEGREES: AxisMap = IDENTITY.map(({ axis, sign }) => ({ axis, sign: (sign * Math.PI) / 180 }));
 
 /** A sensor's vector in the device, with its times. */
 export interface VectorReadings {
@@ -42,8 +46,22 @@ export function fieldOf({ t_s, x_uT, y_uT, z_uT }: ReadingsMag): VectorReadings 
  */
 export function checkRotation(gyro: ReadingsGyro, vector: VectorReadings): Finding[] {
   const looks = looksOf(gyro, vector);
-  const plain = looks && leftOver(looks, IDENTITY);
-  if (!looks || !plain || plain.share < DISAGREES) return [];
+  if (!looks) return [];
+  const plain = leftOver(looks, IDENTITY);
+  const inDegrees = leftOver(looks, DEGREES);
+  if (inDegrees && inDegrees.share < Math.min(CLEARLY_AGREES, (plain?.share ?? 1) / 2))
+    return [
+      {
+        severity: 'fail',
+        kind: 'wrong-unit',
+        sensor: 'gyro',
+        from_s: 0,
+        to_s: gyro.t_s.at(-1) ?? 0,
+        value: inDegrees.share,
+        message: `gyroscope: it agrees with the ${vector.sensor === 'accel' ? 'accelerometer' : 'magnetometer'} only if its numbers are degrees a second; headings are meaningless; the layout's unit is probably degps`,
+      },
+    ];
+  if (!plain || plain.share < DISAGREES) return [];
   let best = { share: plain.share, axes: '' };
   for (const map of AXIS_MAPS) {
     const share = leftOver(looks, map)?.share ?? 1;
@@ -58,7 +76,7 @@ export function checkRotation(gyro: ReadingsGyro, vector: VectorReadings): Findi
     {
       severity: isForce || mended ? 'fail' : 'warn',
       kind: mended ? 'wrong-axes' : 'sensors-disagree',
-      sensor: isForce ? 'gyro' : 'mag',
+      sensor: isForce || mended ? 'gyro' : 'mag',
       from_s: 0,
       to_s: gyro.t_s.at(-1) ?? 0,
       value: plain.share,

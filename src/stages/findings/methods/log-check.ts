@@ -3,6 +3,7 @@ import type { PassContext, WalkContext } from '../../../campaign/context.js';
 import type { Findings } from '../../../tables/schemas.js';
 import { defineMethod } from '../../stage.js';
 import { checkChannels } from '../check-channels.js';
+import { checkDelay } from '../check-delay.js';
 import { checkField } from '../check-field.js';
 import { checkImport } from '../check-import.js';
 import { checkRest } from '../check-rest.js';
@@ -34,6 +35,8 @@ const settingsSchema = z.strictObject({
   /** A field this far from the walk's median turns headings by ten degrees and more. */
   disturbed_pct: z.number().positive().default(30),
   disturbed_s: z.number().positive().default(1.5),
+  /** Longest delay of the magnetometer against the gyroscope: in 40 ms a quick turn goes on by four degrees. */
+  delay_s: z.number().positive().default(0.04),
   /** Distance per step that no walker reaches, and that is too short even round corners. */
   longest_step_m: z.number().positive().default(1.3),
   shortest_step_m: z.number().positive().default(0.1),
@@ -119,6 +122,7 @@ function checkReadings(inputs: FindingsInputs, settings: Settings, context: Walk
   const turns = gyro && accel ? checkRotation(gyro, forceOf(accel)) : [];
   out.push(...turns);
   if (gyro && mag && turns.length === 0) out.push(...checkRotation(gyro, fieldOf(mag)));
+  if (gyro && mag) out.push(...checkDelay(gyro, mag, { delayS: settings.delay_s }));
   if (accel && mag) out.push(...checkSign(accel, mag, place));
   if (accel)
     out.push(
