@@ -11,7 +11,7 @@ interface CalibrateOptions {
   campaign: string;
   walk: string[];
   device?: string | undefined;
-  fit: 'bias' | 'scales' | 'full';
+  fit?: 'bias' | 'scales' | 'full' | undefined;
   kind: 'overlapping-allan' | 'modified-allan' | 'overlapping-hadamard';
   recipe?: string | undefined;
   jobs?: number | undefined;
@@ -43,8 +43,7 @@ export const calibrateCommand: Command<CalibrateOptions> = {
       })
       .option('fit', {
         choices: ['bias', 'scales', 'full'] as const,
-        default: 'full' as const,
-        describe: 'accel, mag: zero only, scales too, or angles as well',
+        describe: 'zero only (default for gyro), scales too, or angles as well (default for accel and mag)',
       })
       .option('kind', {
         choices: ['overlapping-allan', 'modified-allan', 'overlapping-hadamard'] as const,

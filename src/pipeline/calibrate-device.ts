@@ -1,4 +1,5 @@
 import { fitNorm, type NormFit, type NormShape } from '../calibration/fit-norm.js';
+import { fitGyroScale, type PoseChange } from '../calibration/gyro-scale.js';
 import { stillPoses } from '../calibration/still-poses.js';
 import type { AxisCalibration } from '../campaign/context.js';
 import { placeOf } from '../campaign/place.js';
@@ -31,7 +32,7 @@ export interface DeviceFit {
 export interface CalibrateOptions {
   /** Walks whose logs are used; they must be of one device. */
   walks: readonly string[];
-  /** What of accelerometer or magnetometer is fitted; default all that the data determine: `full`. */
+  /** What is fitted; default `bias` for the gyroscope, `full` for the others. */
   shape?: NormShape | undefined;
   /** Device name where walks.csv gives none. */
   device?: string | undefined;
@@ -40,13 +41,15 @@ export interface CalibrateOptions {
 /** Scatter within a second up to which a device lies still: on a table with a noisy part. */
 const STILL_MPS2 = 0.3;
 const STILL_RADPS = 0.03;
+/** Only the direction of gravity matters where this is used. */
+const STANDARD_GRAVITY_MPS2 = 9.80665;
 const IDENTITY: AxisCalibration['matrix'] = [1, 0, 0, 0, 1, 0, 0, 0, 1];
 
 /**
  * Calibrates one sensor of a device from still or rotation logs, and writes `calibrations/device-<device>.yaml`, which
  * `motion` uses from then on.
  *
- * gyro: mean rate over still seconds. accel: |f| in still poses is gravity. mag: |m| is the field of the model at the
+ * gyro: mean rate over still seconds; with `scales` or `full` the scales too, from turns between still poses. accel: |f| in still poses is gravity. mag: |m| is the field of the model at the
  * place and date, or, where the place is not known, the median size.
  *
  * @throws InputError where the logs are of several devices, lack the sensor, or cannot determine the parameters.
@@ -62,7 +65,7 @@ export async function calibrateDevice(
   const place = placeOf(campaign.grid);
   const found =
     sensor === 'gyro'
-      ? gyroAtRest(logs)
+      ? gyroAtRest(logs, options.shape ?? 'bias')
       : sensor === 'accel'
         ? accelFromPoses(logs, place.gravity_mps2, options.shape ?? 'full')
         : magFromRotation(logs, place.field_uT, options.shape ?? 'full');
@@ -102,7 +105,7 @@ function deviceWalks(campaignDir: string, what: string, options: CalibrateOption
 
 type Found = Pick<DeviceFit, 'calibration' | 'biasSd' | 'fit' | 'basis'>;
 
-function gyroAtRest(logs: readonly LogReadings[]): Found {
+function gyroAtRest(logs: readonly LogReadings[], shape: NormShape): Found {
   const windows = logs.flatMap(({ gyro }) =>
     gyro ? stillWindows(gyro.t_s, [gyro.x_radps, gyro.y_radps, gyro.z_radps], STILL_RADPS) : [],
   );
@@ -121,12 +124,52 @@ function gyroAtRest(logs: readonly LogReadings[]): Found {
   const biasSd = [0, 1, 2].map((a) =>
     Math.sqrt(still.reduce((sum, w) => sum + (w.mean[a]! - mean[a]!) ** 2, 0) / (n - 1) / n),
   );
+  const bias: [number, number, number] = [mean[0]!, mean[1]!, mean[2]!];
+  const basis = `${n} still seconds`;
+  if (shape === 'bias') return { calibration: { bias, matrix: IDENTITY }, biasSd, fit: null, basis };
+  const changes = logs.flatMap((log) => poseChanges(log, bias));
+  const { scale, scaleSd, residual, residualBefore } = fitGyroScale(changes);
+  const degrees = (rad: number) => ((rad * 180) / Math.PI).toFixed(2);
   return {
-    calibration: { bias: [mean[0]!, mean[1]!, mean[2]!], matrix: IDENTITY },
+    calibration: { bias, matrix: [scale[0], 0, 0, 0, scale[1], 0, 0, 0, scale[2]] },
     biasSd,
     fit: null,
-    basis: `${n} still seconds`,
+    basis: `${basis} and ${changes.length} turns between still poses (gravity off by ${degrees(residual)} degrees, ${degrees(residualBefore)} before; scales' se ${scaleSd.map((x) => x.toFixed(4)).join(', ')})`,
   };
+}
+
+/** Turns from one still pose to the next in one log, with the zero taken off. */
+function poseChanges({ accel, gyro }: LogReadings, bias: readonly number[]): PoseChange[] {
+  if (!accel || !gyro) return [];
+  const axes: [Float64Array, Float64Array, Float64Array] = [accel.x_mps2, accel.y_mps2, accel.z_mps2];
+  const poses = stillPoses(accel.t_s, axes, STILL_MPS2);
+  // Gravity's direction needs the accelerometer's zero and scales, which the same poses tell.
+  const fit =
+    poses.length >= 6
+      ? fitNorm(axesOf(poses.map(({ mean }) => mean)), STANDARD_GRAVITY_MPS2, 'scales')
+      : null;
+  const direction = (mean: readonly [number, number, number]): [number, number, number] => {
+    const v = mean.map((x, a) => (fit ? fit.matrix[4 * a]! * (x - fit.bias[a]!) : x));
+    const size = Math.hypot(v[0]!, v[1]!, v[2]!);
+    return [v[0]! / size, v[1]! / size, v[2]! / size];
+  };
+  const rates = [gyro.x_radps, gyro.y_radps, gyro.z_radps];
+  return poses.slice(1).map((after, k) => {
+    const before = poses[k]!;
+    const from = gyro.t_s.findIndex((t) => t >= (before.from_s + before.to_s) / 2);
+    const end = gyro.t_s.findIndex((t) => t >= (after.from_s + after.to_s) / 2);
+    const stepS = Float64Array.from(
+      { length: end - from },
+      (_, i) => gyro.t_s[from + i + 1]! - gyro.t_s[from + i]!,
+    );
+    const rate = rates.map((column, a) => column.slice(from, end).map((x) => x - bias[a]!));
+    return {
+      rate: rate as unknown as PoseChange['rate'],
+      stepS,
+      before: direction(before.mean),
+      after: direction(after.mean),
+    };
+  });
 }
 
 function accelFromPoses(logs: readonly LogReadings[], gravity: number, shape: NormShape): Found {

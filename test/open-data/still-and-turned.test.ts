@@ -44,6 +44,15 @@ describe.skipIf(!parts)('real parts', () => {
     expect(fit!.worst / 9.80665).toBeLessThan(0.003);
   });
 
+  test('gyroscope scales by gravity: what reads as half a turn between opposite poses is told', async () => {
+    const { calibration } = await calibrateDevice(benchCampaign(), 'gyro', {
+      walks: ['six'],
+      shape: 'scales',
+    });
+    // From one pose to the opposite one gravity turns by 180 degrees in this log, and the rates add up to 88 to 93.
+    for (const k of [0, 4, 8]) expect(Math.abs(calibration.matrix[k]! - 2)).toBeLessThan(0.12);
+  });
+
   test('noise of the still log falls with the root of the averaging time', async () => {
     const axes = await noiseOfLog(benchCampaign(), 'still');
     expect(axes).toHaveLength(6);
