@@ -16,6 +16,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   campaign: ['errors.ts', 'tables', 'geometry', 'signal', 'stats', 'stages'],
   stages: ['errors.ts', 'signal', 'geometry', 'stats', 'tables', 'campaign'],
   calibration: ['errors.ts', 'signal', 'stats'],
+  report: ['errors.ts', 'stats', 'tables'],
   scores: ['errors.ts', 'signal', 'geometry', 'stats', 'tables', 'campaign', 'stages'],
   simulate: ['errors.ts', 'geometry', 'signal', 'stats', 'tables', 'campaign'],
 };

@@ -13,6 +13,7 @@ interface CalibrateOptions {
   device?: string | undefined;
   fit?: 'bias' | 'scales' | 'full' | undefined;
   kind: 'overlapping-allan' | 'modified-allan' | 'overlapping-hadamard';
+  plot?: string | undefined;
   recipe?: string | undefined;
   jobs?: number | undefined;
 }
@@ -49,6 +50,11 @@ export const calibrateCommand: Command<CalibrateOptions> = {
         choices: ['overlapping-allan', 'modified-allan', 'overlapping-hadamard'] as const,
         default: 'overlapping-allan' as const,
         describe: 'noise: the deviation',
+      })
+      .option('plot', {
+        type: 'string',
+        requiresArg: true,
+        describe: 'noise: write plots to FILE-accel.svg and FILE-gyro.svg',
       })
       .option('recipe', {
         type: 'string',
@@ -106,7 +112,7 @@ async function delay({ campaign, walk, device: name, json, quiet }: Given, io: I
   return 0;
 }
 
-async function noise({ campaign, walk, kind, json }: Given, io: Io): Promise<ExitCode> {
+async function noise({ campaign, walk, kind, plot, json, quiet }: Given, io: Io): Promise<ExitCode> {
   if (walk.length !== 1)
     throw new InputError(
       'usage',
@@ -116,6 +122,20 @@ async function noise({ campaign, walk, kind, json }: Given, io: Io): Promise<Exi
   const axes = await noiseOfLog(campaign, walk[0]!, kind);
   const { noiseJson, noiseText } = await import('./calibration-text.js');
   io.out(json ? `${JSON.stringify(noiseJson(axes), null, 2)}\n` : noiseText(axes));
+  if (plot !== undefined) {
+    const { noisePlot } = await import('../report/noise-plot.js');
+    const { writeText } = await import('../tables/write.js');
+    for (const [sensor, unit] of [
+      ['accel', 'm/s2'],
+      ['gyro', 'rad/s'],
+    ] as const) {
+      const curves = axes.filter((axis) => axis.sensor === sensor);
+      if (curves.length === 0) continue;
+      const path = `${plot.replace(/\.svg$/, '')}-${sensor}.svg`;
+      writeText(path, noisePlot(sensor, unit, curves));
+      if (!quiet) io.err(`plot in ${path}\n`);
+    }
+  }
   return 0;
 }
 
