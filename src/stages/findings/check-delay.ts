@@ -8,7 +8,7 @@ export interface DelayLimits {
   delayS: number;
 }
 
-const GRID_S = 0.02;
+const GRID_S = 0.04;
 /** Only where the two look alike does a delay mean anything; walks with turns reach 0.9. */
 const LEAST_CORRELATION = 0.6;
 /** Each half needs this long for a delay of its own, s. */

@@ -48,6 +48,7 @@ export function checkRotation(gyro: ReadingsGyro, vector: VectorReadings): Findi
   const looks = looksOf(gyro, vector);
   if (!looks) return [];
   const plain = leftOver(looks, IDENTITY);
+  if (plain && plain.share < CLEARLY_AGREES) return [];
   const inDegrees = leftOver(looks, DEGREES);
   if (inDegrees && inDegrees.share < Math.min(CLEARLY_AGREES, (plain?.share ?? 1) / 2))
     return [
@@ -162,27 +163,41 @@ function turnedIntoOneFrame(
   map: AxisMap,
 ) {
   const q = new Float64Array(4 * bins);
-  const out = [new Float64Array(bins), new Float64Array(bins), new Float64Array(bins)];
-  let [w, x, y, z] = [1, 0, 0, 0];
+  const out = [new Float64Array(bins), new Float64Array(bins), new Float64Array(bins)] as const;
+  const [vx, vy, vz] = vector as readonly [Float64Array, Float64Array, Float64Array];
+  const [rx, ry, rz] = map.map(({ axis }) => rate[axis]!) as [Float64Array, Float64Array, Float64Array];
+  const [kx, ky, kz] = map.map(({ sign }) => (sign * BIN_S) / 2) as [number, number, number];
+  let w = 1;
+  let x = 0;
+  let y = 0;
+  let z = 0;
   for (let b = 0; b < bins; b++) {
-    q.set([w, x, y, z], 4 * b);
-    const v = rotated(q, b, [vector[0]![b]!, vector[1]![b]!, vector[2]![b]!], 1);
-    for (let a = 0; a < 3; a++) out[a]![b] = v[a]!;
-    const [hx, hy, hz] = map.map(({ axis, sign }) => (sign * rate[axis]![b]! * BIN_S) / 2) as [
-      number,
-      number,
-      number,
-    ];
-    const half = Math.hypot(hx, hy, hz);
+    q[4 * b] = w;
+    q[4 * b + 1] = x;
+    q[4 * b + 2] = y;
+    q[4 * b + 3] = z;
+    const tx = 2 * (y * vz[b]! - z * vy[b]!);
+    const ty = 2 * (z * vx[b]! - x * vz[b]!);
+    const tz = 2 * (x * vy[b]! - y * vx[b]!);
+    out[0][b] = vx[b]! + w * tx + y * tz - z * ty;
+    out[1][b] = vy[b]! + w * ty + z * tx - x * tz;
+    out[2][b] = vz[b]! + w * tz + x * ty - y * tx;
+    const hx = kx * rx[b]!;
+    const hy = ky * ry[b]!;
+    const hz = kz * rz[b]!;
+    const half = Math.sqrt(hx * hx + hy * hy + hz * hz);
     const c = Math.cos(half);
     const s = half > 0 ? Math.sin(half) / half : 1;
-    const [dx, dy, dz] = [s * hx, s * hy, s * hz];
-    [w, x, y, z] = [
-      w * c - x * dx - y * dy - z * dz,
-      x * c + w * dx + y * dz - z * dy,
-      y * c + w * dy + z * dx - x * dz,
-      z * c + w * dz + x * dy - y * dx,
-    ];
+    const dx = s * hx;
+    const dy = s * hy;
+    const dz = s * hz;
+    const nw = w * c - x * dx - y * dy - z * dz;
+    const nx = x * c + w * dx + y * dz - z * dy;
+    const ny = y * c + w * dy + z * dx - x * dz;
+    z = z * c + w * dz + x * dy - y * dx;
+    w = nw;
+    x = nx;
+    y = ny;
   }
   return { vector: out, intoDevice: (v: Vector, bin: number) => rotated(q, bin, v, -1) };
 }

@@ -5,6 +5,7 @@ import { quantile } from '../../stats/quantile.js';
 import type { ReadingsAccel } from '../../tables/schemas.js';
 import { binned } from './binned.js';
 import type { Finding } from './finding.js';
+import { vectorSize } from './vector-size.js';
 
 export interface SpacingLimits {
   /** Shortest and longest distance between checkpoints per step, m. */
@@ -33,9 +34,7 @@ export function checkSpacing(
   const end_s = accel.t_s.at(-1) ?? 0;
   const bins = Math.floor(end_s / BIN_S);
   if (passes.length < 2 || bins < 50) return [];
-  const size = Float64Array.from(accel.x_mps2, (_, i) =>
-    Math.hypot(accel.x_mps2[i]!, accel.y_mps2[i]!, accel.z_mps2[i]!),
-  );
+  const size = vectorSize(accel.x_mps2, accel.y_mps2, accel.z_mps2);
   const [mean] = binned(accel.t_s, [size], BIN_S, bins);
   let last = 9.8;
   const level = zeroPhase(

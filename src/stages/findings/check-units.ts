@@ -1,5 +1,6 @@
 import { quantile } from '../../stats/quantile.js';
 import { type Finding, SENSOR_WORDS } from './finding.js';
+import { vectorSize } from './vector-size.js';
 
 /** Sizes that a sensor's vector has in a unit, with what to write in the layout. */
 interface UnitGuess {
@@ -33,6 +34,9 @@ const RIGHT: Readonly<Record<'accel' | 'mag', readonly [number, number, string]>
 /** A gyroscope on a walker reads more than this at one time in twenty only in degrees: 10 rad/s is 570 degrees a second. */
 const FASTEST_RADPS = 10;
 
+/** As many readings tell a walk's median as well as all. */
+const SAMPLES = 20_000;
+
 /** Whether a sensor's numbers have the size that its unit lets expect. */
 export function checkUnits(
   sensor: 'accel' | 'gyro' | 'mag',
@@ -41,7 +45,7 @@ export function checkUnits(
   y: Float64Array,
   z: Float64Array,
 ): Finding[] {
-  const size = Float64Array.from(x, (_, i) => Math.hypot(x[i]!, y[i]!, z[i]!));
+  const size = vectorSize(x, y, z, Math.max(1, Math.floor(x.length / SAMPLES)));
   const known = size.filter(Number.isFinite);
   if (known.length < 10) return [];
   const whole = { sensor, from_s: t[0]!, to_s: t.at(-1)! };

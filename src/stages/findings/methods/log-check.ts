@@ -91,10 +91,11 @@ function checkReadings(inputs: FindingsInputs, settings: Settings, context: Walk
   }
   if (gyro) {
     const { t_s, x_radps, y_radps, z_radps } = gyro;
-    // A phone that is spun by hand turns as fast as degrees look; then gravity turns with it.
-    const agrees =
+    const units = checkUnits('gyro', t_s, x_radps, y_radps, z_radps);
+    // A phone that is spun by hand turns as fast as degrees look; then gravity and field turn with it.
+    const agrees = () =>
       (accel && rotationAgrees(gyro, forceOf(accel))) || (mag && rotationAgrees(gyro, fieldOf(mag)));
-    if (!agrees) out.push(...checkUnits('gyro', t_s, x_radps, y_radps, z_radps));
+    if (units.length > 0 && !agrees()) out.push(...units);
     out.push(...checkChannels('gyro', t_s, [x_radps, y_radps, z_radps], channels));
   }
   if (mag) {
