@@ -8,6 +8,7 @@ import { VERSION } from '../version.js';
 import { calibrateCommand } from './calibrate.js';
 import { checkCommand } from './check.js';
 import { type Command, commandModule, type ExitCode, type SharedOptions } from './command.js';
+import { compareCommand } from './compare.js';
 import { demoCommand } from './demo.js';
 import type { Io } from './io.js';
 import { runCommand } from './run.js';
@@ -22,6 +23,7 @@ const COMMANDS: readonly Command<any>[] = [
   checkCommand,
   runCommand,
   scoreCommand,
+  compareCommand,
   showCommand,
   calibrateCommand,
   simulateCommand,

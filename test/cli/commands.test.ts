@@ -1,4 +1,4 @@
-import { existsSync, readFileSync } from 'node:fs';
+import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { beforeAll, expect, test } from 'vitest';
 import { smallCampaign } from '../small-campaign.js';
@@ -74,4 +74,18 @@ test('the demo refuses a folder that holds something else', async () => {
     code: 2,
     err: expect.stringMatching(/holds something other than the demo/),
   });
+});
+
+test('compare: verdict, table, what the recipes differ in, gates and their exit code', async () => {
+  const recipe = join(temporaryFolder(), 'plain.yaml');
+  writeFileSync(recipe, 'name: plain\nheadings: { method: device-axis }\n');
+  const plain = join(temporaryFolder(), 'plain');
+  await runCli('run', campaign, '--recipe', recipe, '--out', plain, '--jobs', '1', '--quiet');
+  const { code, out } = await runCli('compare', plain, results, '--gate', 'p95 <= 50 m');
+  expect(code).toBe(0);
+  expect(out).toMatch(/^b is (better|worse) by .* with 2 walkers that cannot be told from luck\n/);
+  expect(out).toContain('headings.method ("device-axis" to "tracked-offset")');
+  expect(out).toMatch(/^holds {2}p95 <= 50 m/m);
+  expect(await runCli('compare', plain, results, '--gate', 'p95 <= 0.001 m')).toMatchObject({ code: 1 });
+  expect(await runCli('compare', plain, results, '--gate', 'p95 is good')).toMatchObject({ code: 2 });
 });
