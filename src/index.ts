@@ -7,10 +7,21 @@
  * @packageDocumentation
  */
 
+// Calibration
+export { fitNorm, type NormFit, type NormShape } from './calibration/fit-norm.js';
+export { fitGyroScale, type GyroScaleFit, type PoseChange } from './calibration/gyro-scale.js';
+export {
+  type FittedConstant,
+  fitStepConstants,
+  type MeasuredWalk,
+  type StepConstants,
+} from './calibration/step-constants.js';
+export { type StillPose, stillPoses } from './calibration/still-poses.js';
 export { type AttitudeTruth, readAttitudeTruth } from './campaign/attitude-truth.js';
 export type {
   AxisCalibration,
   DeviceCalibration,
+  FloorContext,
   PassContext,
   PlaceContext,
   StartContext,
@@ -50,6 +61,7 @@ export {
   type Walker,
 } from './campaign/types.js';
 export { type LogSpan, walkContext } from './campaign/walk-context.js';
+export { writeCalibrationPart } from './campaign/write-calibration.js';
 export {
   type WrittenColumn,
   writeCampaignYaml,
@@ -61,6 +73,7 @@ export { DEMO_PLAN, makeDemo } from './demo.js';
 export { InputError, InputErrors, messageOf } from './errors.js';
 // Geometry, geodesy, the geomagnetic field
 export { alignPlanar, type PlanarAlignment } from './geometry/alignment-2d.js';
+export { edgeDirections } from './geometry/edge-directions.js';
 export {
   ecefFromGeodetic,
   type GeodeticGrid,
@@ -85,10 +98,27 @@ export {
 export { type Alignment, type AlignmentKind, alignPoints } from './geometry/umeyama.js';
 export { WGS84_A_M, WGS84_E2, WGS84_FLATTENING } from './geometry/wgs84.js';
 export { GEOMAGNETIC_MODELS, type GeomagneticModel } from './geometry/wmm-coefficients.js';
+export {
+  type CalibratedSensor,
+  type CalibrateOptions,
+  calibrateDelay,
+  calibrateDevice,
+  type DelayFit,
+  type DeviceFit,
+} from './pipeline/calibrate-device.js';
+export { calibrateWalkers, type WalkersFit } from './pipeline/calibrate-walkers.js';
+export {
+  type CheckedCampaign,
+  type CheckedWalk,
+  type CheckOptions,
+  checkCampaign,
+} from './pipeline/check-campaign.js';
+export { compareResults, type ResultsComparison } from './pipeline/compare-results.js';
+export { type AxisNoise, noiseOfLog } from './pipeline/noise-of-log.js';
 export { problemOf, type WalkJob, type WalkOutcome, type WalkProblem, walkJob } from './pipeline/outcome.js';
 export { type Results, readResults } from './pipeline/read-results.js';
 export { STAGE_NAMES, STAGES } from './pipeline/stages.js';
-// Running and scoring
+// Running, checking, scoring, comparing
 export {
   chosenWalks,
   faultFile,
@@ -97,9 +127,14 @@ export {
   recipeOf,
   runCampaign,
 } from './pipeline.js';
+// Plots
+export { type NoiseCurve, noisePlot } from './report/noise-plot.js';
+export { svgPlot } from './report/svg-plot.js';
 // Scores
 export { type ErrorStatistics, errorStatistics } from './scores/error-statistics.js';
+export { type Gate, gateHolds, parseGate } from './scores/gate.js';
 export { groupScores } from './scores/group-scores.js';
+export { type ComparedGroup, compareWalks, type PairedWalk } from './scores/paired-comparison.js';
 export { STEP_TOLERANCE_S, type StepAgreement, stepAgreement } from './scores/step-agreement.js';
 export { type ScoredWalk, walkScores } from './scores/walk-scores.js';
 // Signal kernels
@@ -110,6 +145,8 @@ export { interpolateCubic } from './signal/interpolate-cubic.js';
 export { localMaxima, parabolicTop, peakProminences } from './signal/local-maxima.js';
 export { decimate, lowPassTaps } from './signal/low-pass-fir.js';
 export { medianRateHz } from './signal/sampling-rate.js';
+export { type StillWindow, stillWindows } from './signal/still-windows.js';
+export { type VectorDelay, vectorDelay } from './signal/vector-delay.js';
 export { zeroPhase } from './signal/zero-phase.js';
 export { type Cast, castOf, routeKey, simulateWalks } from './simulate/cast.js';
 // Simulation
@@ -149,12 +186,22 @@ export { uniformGrid } from './stages/motion/methods/uniform-grid.js';
 export { type PathInputs, pathStage } from './stages/path/index.js';
 export { deadReckoning } from './stages/path/methods/dead-reckoning.js';
 // Stages and their methods
-export { type AnyStage, defineMethod, defineStage, type Method, type Stage } from './stages/stage.js';
+export {
+  type AnyStage,
+  type ContextParts,
+  defineMethod,
+  defineStage,
+  type Method,
+  partsUsed,
+  type Stage,
+} from './stages/stage.js';
 export { type StepsInputs, stepsStage } from './stages/steps/index.js';
 export { adaptivePeakValley } from './stages/steps/methods/adaptive-peak-valley.js';
+export { peakChain } from './stages/steps/methods/peak-chain.js';
 export { type StridesInputs, stridesStage } from './stages/strides/index.js';
 export { weinberg } from './stages/strides/methods/weinberg.js';
 export { type AllanDeviation, type AllanKind, allanDeviation } from './stats/allan.js';
+// Statistics
 export { equivalentDegreesOfFreedom } from './stats/allan-degrees.js';
 export {
   type BootstrapInterval,
@@ -163,7 +210,6 @@ export {
   type IndexStatistics,
 } from './stats/bootstrap.js';
 export { chiSquareCdf, chiSquareQuantile } from './stats/chi-square.js';
-// Statistics
 export {
   type CircleChain,
   type CircleMove,
