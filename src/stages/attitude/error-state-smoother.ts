@@ -2,6 +2,7 @@ import type { PlaceContext } from '../../campaign/context.js';
 import { Measurements, type SmoothedChain, smoothChain } from '../../stats/fixed-interval-smoother.js';
 import type { InertialSamples } from './inertial-samples.js';
 import { followBranch, type MagneticHeading, magneticHeading, meanAngle } from './magnetic-heading.js';
+import { MagneticWeights } from './magnetic-weights.js';
 import type { SmootherSettings } from './methods/fixed-interval-smoother.js';
 import { restIntervals } from './rest.js';
 import { Trajectory } from './trajectory.js';
@@ -24,9 +25,6 @@ const CROSS: readonly (readonly [number, number])[] = [
 
 /** Entries of the transition beside the identity, in the order in which `fillTransition` writes them. */
 const PATTERN = transitionPattern();
-
-/** Degrees of freedom of the Student-t weights: heavy tails, variance still finite (common practice, no source). */
-const DEGREES_OF_FREEDOM = 4;
 
 /** Variance of a yaw that nothing is known of: uniform over a turn. */
 const UNKNOWN_YAW_VARIANCE = Math.PI ** 2 / 3;
@@ -53,13 +51,6 @@ const REST_VELOCITY_SD = 0.02;
 /** Random walk of attitude and velocity inside a gap: a turn of a radian, a change of 5 m/s in a second. */
 const GAP_ATTITUDE_WALK = 1;
 const GAP_VELOCITY_WALK = 5;
-
-/** First guess of the magnetic heading's scatter, rad, before it is estimated, and its floor. */
-const FIRST_MAGNETIC_SD = 0.5;
-const LEAST_MAGNETIC_SD = 0.01;
-
-/** What is fitted to the magnetic headings of a walk: yaw, bias and a scale, in effect. */
-const FITTED = 3;
 
 /** Seconds on either side that make the slow course of magnetic heading when its branch is chosen. */
 const BRANCH_WINDOW_S = 5;
@@ -104,7 +95,7 @@ export function smoothAttitude(
         heading = magneticHeading(trajectory, place.declination_rad, settings);
         followBranch(heading.angle, trajectory.fieldCount, Math.round(BRANCH_WINDOW_S / settings.node_s));
       }
-      weights.update(heading, trajectory, round > 1 ? chain : null);
+      weights.update(heading, trajectory, round > 1);
     }
     chain = smoothChain({
       nodes,
@@ -292,51 +283,6 @@ function measurements(
     );
   }
   return out;
-}
-
-/** Variance of each magnetic heading by the walk's own scatter, the field's deviation and Student-t weights. */
-class MagneticWeights {
-  readonly variance: Float64Array;
-  readonly trust: Float64Array;
-  private scatter2 = FIRST_MAGNETIC_SD ** 2;
-  private readonly repeat: number;
-
-  constructor(intervals: number, settings: SmootherSettings) {
-    this.variance = new Float64Array(intervals);
-    this.trust = new Float64Array(intervals);
-    this.repeat = Math.max(1, (2 * settings.magnetic_memory_s) / settings.node_s);
-  }
-
-  /** `before` is the round before, where the angles are residuals of a settled yaw; null before that. */
-  update(heading: MagneticHeading, trajectory: Trajectory, before: SmoothedChain | null): void {
-    const { fieldCount } = trajectory;
-    const intervals = fieldCount.length;
-    const tails = new Float64Array(intervals).fill(1);
-    if (before) {
-      let sum = 0;
-      let used = 0;
-      for (let j = 0; j < intervals; j++) {
-        if (fieldCount[j] === 0) continue;
-        const r2 = heading.angle[j]! ** 2 / (this.scatter2 * heading.deviation[j]!);
-        tails[j] = (DEGREES_OF_FREEDOM + 1) / (DEGREES_OF_FREEDOM + r2);
-        const weight = tails[j]! / heading.deviation[j]!;
-        sum += weight * heading.angle[j]! ** 2;
-        used++;
-      }
-      const stretches = used / this.repeat;
-      if (used > 0)
-        this.scatter2 = Math.max(
-          LEAST_MAGNETIC_SD ** 2,
-          ((sum / used) * stretches) / Math.max(1, stretches - FITTED),
-        );
-    }
-    for (let j = 0; j < intervals; j++) {
-      if (fieldCount[j] === 0) continue;
-      const relative = heading.deviation[j]! / tails[j]!;
-      this.variance[j] = this.scatter2 * relative * this.repeat;
-      this.trust[j] = Math.min(1, 1 / relative);
-    }
-  }
 }
 
 /** Expectation-maximisation step for the scatter of the velocity in motion and of turning at rest. */
