@@ -106,9 +106,17 @@ function deviceWalks(campaignDir: string, what: string, options: CalibrateOption
 type Found = Pick<DeviceFit, 'calibration' | 'biasSd' | 'fit' | 'basis'>;
 
 function gyroAtRest(logs: readonly LogReadings[], shape: NormShape): Found {
-  const windows = logs.flatMap(({ gyro }) =>
-    gyro ? stillWindows(gyro.t_s, [gyro.x_radps, gyro.y_radps, gyro.z_radps], STILL_RADPS) : [],
-  );
+  const windows = logs.flatMap(({ gyro, accel }) => {
+    if (!gyro) return [];
+    const turning = stillWindows(gyro.t_s, [gyro.x_radps, gyro.y_radps, gyro.z_radps], STILL_RADPS);
+    if (!accel) return turning;
+    // A walker's phone may hardly turn, but it is shaken.
+    const resting = stillWindows(accel.t_s, [accel.x_mps2, accel.y_mps2, accel.z_mps2], STILL_MPS2);
+    return turning.filter(({ from_s, to_s }) => {
+      const middle = (from_s + to_s) / 2;
+      return resting.some((rest) => rest.from_s <= middle && middle <= rest.to_s);
+    });
+  });
   if (windows.length < 5)
     throw new InputError(
       'too-few',
